@@ -1,0 +1,251 @@
+"""The unknowns of a study: one layout for fit, sampling and results.
+
+A point is a vector q of unconstrained coordinates; a batch of points is (lanes, dim). Blocks turn their slice of q
+into named values, lanes last, and carry gradients and directions back and forth.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass, field
+from typing import Protocol
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pullback.inverse.area_field import Basis
+from pullback.inverse.priors import Prior, log_prior
+
+Array = NDArray[np.float64]
+Values = dict[str, Array]
+
+
+class Block(Protocol):
+    """A run of coordinates with one name."""
+
+    name: str
+    unit: str
+    size: int
+
+    def unpack(self, q: Array, values: Values) -> Array:
+        """Value for q (size, lanes); blocks before this one are in `values` already."""
+
+    def log_prior(self, q: Array, values: Values) -> Array:
+        """Log prior density of q (lanes,)."""
+
+    def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
+        """d(log prior + f)/dq (size, lanes), f's derivatives by value being in `grads`; adds to grads of earlier blocks."""
+
+
+@dataclass(frozen=True)
+class Scalar:
+    """One unknown with a prior; value (lanes,)."""
+
+    name: str
+    unit: str
+    prior: Prior
+    size: int = 1
+
+    def unpack(self, q: Array, values: Values) -> Array:
+        """The prior's map of its coordinate."""
+        return self.prior.value(q[0])
+
+    def log_prior(self, q: Array, values: Values) -> Array:
+        """See `priors.log_prior`."""
+        return log_prior(self.prior, q[0])
+
+    def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
+        """Chain through the prior's map."""
+        g = grads[self.name] * self.prior.slope(q[0])
+        return (g - q[0] if self.prior.proper else g)[None]
+
+
+@dataclass(frozen=True)
+class Drive:
+    """The true travel or end force of each step, flat about its reading; value (steps, lanes)."""
+
+    name: str
+    unit: str
+    start: Array
+    scale: Array
+
+    @property
+    def size(self) -> int:
+        """Number of steps."""
+        return self.start.size
+
+    def unpack(self, q: Array, values: Values) -> Array:
+        """start + scale q."""
+        return self.start[:, None] + self.scale[:, None] * q
+
+    def log_prior(self, q: Array, values: Values) -> Array:
+        """Flat: zero."""
+        return np.zeros(q.shape[1])
+
+    def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
+        """Scaled gradient."""
+        return grads[self.name] * self.scale[:, None]
+
+
+@dataclass(frozen=True)
+class Field:
+    """Coefficients of one part's section field; value beta (m, lanes).
+
+    Coefficient k is beta_k = w_k(spread, ell) z_k with z_k standard normal. Its coordinate is z_k itself (not centred),
+    z_k spread/spread_ref (centred in the spread) or beta_k/w_k(spread_ref, ell_ref) (centred in both): `share_spread`
+    and `share_ell` are 0 or 1 per coefficient. What the data determine well is best sampled centred.
+    """
+
+    name: str
+    unit: str
+    basis: Basis
+    spread_ref: float
+    ell_ref: float
+    share_spread: Array
+    share_ell: Array
+
+    @property
+    def size(self) -> int:
+        """Number of coefficients."""
+        return self.basis.omega.size
+
+    def _log_scale(self, values: Values) -> tuple[Array, Array]:
+        """log w_k, and log of the coordinate's prior standard deviation, (m, lanes)."""
+        spread, ell = values["spread"], values["correlation_length"]
+        log_w = self.basis.log_weight(spread, ell)
+        ref = self.basis.log_weight(np.array([self.spread_ref]), np.array([self.ell_ref]))
+        by_spread = np.log(spread / self.spread_ref)
+        sd = self.share_spread[:, None] * by_spread + self.share_ell[:, None] * (log_w - by_spread - ref)
+        return log_w, sd
+
+    def unpack(self, q: Array, values: Values) -> Array:
+        """beta_k."""
+        log_w, log_sd = self._log_scale(values)
+        return np.exp(log_w - log_sd) * q
+
+    def log_prior(self, q: Array, values: Values) -> Array:
+        """Normal with the coordinate's own standard deviation."""
+        log_sd = self._log_scale(values)[1]
+        z = q * np.exp(-log_sd)
+        return np.sum(-0.5 * z * z - log_sd, axis=0)
+
+    def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
+        """Chain to the coordinates, and to spread and correlation length."""
+        spread, ell = values["spread"], values["correlation_length"]
+        log_w, log_sd = self._log_scale(values)
+        scale, inverse = np.exp(log_w - log_sd), np.exp(-log_sd)
+        g_beta, z = grads[self.name], q * inverse
+        g_q = g_beta * scale - z * inverse
+        along = g_beta * scale * q
+        normal = z * z - 1.0
+        by_spread = along * (1.0 - self.share_spread[:, None]) + normal * self.share_spread[:, None]
+        dw = self.basis.log_weight_by_log_ell(ell)
+        by_ell = dw * (along * (1.0 - self.share_ell[:, None]) + normal * self.share_ell[:, None])
+        grads["spread"] = grads["spread"] + by_spread.sum(axis=0) / spread
+        grads["correlation_length"] = grads["correlation_length"] + by_ell.sum(axis=0) / ell
+        return g_q
+
+    def coordinate(self, beta: Array, values: Values) -> Array:
+        """q for given beta (m, lanes)."""
+        log_w, log_sd = self._log_scale(values)
+        return beta * np.exp(log_sd - log_w)
+
+    def recentred(self, spread: float, ell: float, strength: Array) -> Field:
+        """The same field with coefficients centred by `strength`, the diagonal of JᵀJ at the fit (see the thresholds)."""
+        return Field(
+            self.name, self.unit, self.basis, spread, ell,
+            (strength > CENTRED_IN_SPREAD).astype(float), (strength > CENTRED_IN_ELL).astype(float),
+        )  # fmt: skip
+
+
+CENTRED_IN_SPREAD = 3.0
+"""Information (prior variances) above which a coefficient is sampled centred in the spread."""
+CENTRED_IN_ELL = 10.0
+"""Information above which it is sampled centred in the correlation length too."""
+
+
+@dataclass(frozen=True)
+class Layout:
+    """All blocks in order, and constants that take the place of unknowns that the study states exactly."""
+
+    blocks: Sequence[Block]
+    constants: dict[str, float] = field(default_factory=dict)
+
+    @property
+    def dim(self) -> int:
+        """Number of coordinates."""
+        return sum(b.size for b in self.blocks)
+
+    @property
+    def slices(self) -> dict[str, slice]:
+        """Slice of q of each block."""
+        out, at = {}, 0
+        for b in self.blocks:
+            out[b.name] = slice(at, at + b.size)
+            at += b.size
+        return out
+
+    def names(self) -> list[str]:
+        """A name for each coordinate."""
+        return [b.name if b.size == 1 else f"{b.name}[{k + 1}]" for b in self.blocks for k in range(b.size)]
+
+    def block(self, name: str) -> Block:
+        """The block of that name; KeyError where there is none."""
+        for b in self.blocks:
+            if b.name == name:
+                return b
+        raise KeyError(name)
+
+    def scalar(self, name: str) -> Scalar | None:
+        """The scalar unknown of that name, or None where it is a constant or absent."""
+        return next((b for b in self.blocks if b.name == name and isinstance(b, Scalar)), None)
+
+    def unpack(self, q: Array) -> Values:
+        """Named values for q (lanes, dim)."""
+        values: Values = {k: np.full(q.shape[0], v) for k, v in self.constants.items()}
+        for b, part in self._parts(q):
+            values[b.name] = b.unpack(part, values)
+        return values
+
+    def log_prior(self, q: Array, values: Values) -> Array:
+        """Log prior density (lanes,)."""
+        return sum((b.log_prior(part, values) for b, part in self._parts(q)), np.zeros(q.shape[0]))
+
+    def zeros(self, values: Values) -> Values:
+        """Gradients by value, all zero."""
+        return {k: np.zeros_like(v) for k, v in values.items()}
+
+    def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
+        """Gradient by q (lanes, dim) of the log prior plus a function whose gradients by value are `grads`."""
+        rows = [b.pull_back(part, values, grads) for b, part in reversed(self._parts(q))]
+        return np.concatenate(rows[::-1]).T
+
+    def push(self, q: Array, values: Values) -> Values:
+        """d value / d q at a single point q (1, dim): (dim,) for scalars, (size, dim) for the rest."""
+        out: Values = {k: np.zeros(self.dim) for k in self.constants}
+        for b, part in self._parts(q):
+            cut = self.slices[b.name]
+            if isinstance(b, Scalar):
+                out[b.name] = np.zeros(self.dim)
+                out[b.name][cut] = b.prior.slope(part[0])
+            elif isinstance(b, Drive):
+                out[b.name] = np.zeros((b.size, self.dim))
+                out[b.name][:, cut] = np.diag(b.scale)
+            elif isinstance(b, Field):
+                out[b.name] = self._push_field(b, part, cut, values, out)
+        return out
+
+    def _push_field(self, b: Field, q: Array, cut: slice, values: Values, out: Values) -> Array:
+        log_w, log_sd = b._log_scale(values)
+        scale = np.exp(log_w - log_sd)
+        jac = np.zeros((b.size, self.dim))
+        jac[:, cut] = np.diag(scale[:, 0])
+        beta = scale * q
+        jac += beta * (1.0 - b.share_spread[:, None]) * out["spread"] / values["spread"]
+        dw = b.basis.log_weight_by_log_ell(values["correlation_length"])
+        jac += beta * dw * (1.0 - b.share_ell[:, None]) * out["correlation_length"] / values["correlation_length"]
+        return jac
+
+    def _parts(self, q: Array) -> list[tuple[Block, Array]]:
+        cuts = self.slices
+        return [(b, np.ascontiguousarray(q[:, cuts[b.name]].T)) for b in self.blocks]
