@@ -97,11 +97,9 @@ def residual(force: Array, nodal: Array) -> Array:
     return r
 
 
-def tangent(bar: Bar, slope: Array, free: slice) -> tuple[Array, Array]:
-    """Diagonal and off-diagonal of dR/dx on the free nodes (1..n−1 under travel, 1..n under force)."""
-    k = bar.area * slope
-    k *= 1.0 / bar.h
+def tangent(k: Array, by_travel: bool) -> tuple[Array, Array]:
+    """Diagonal and off-diagonal of dR/dx on the free nodes, from the elements' stiffnesses k (n, steps, lanes), N/mm."""
     diagonal = k.copy()
     diagonal[:-1] += k[1:]
-    m = free.stop - free.start
-    return diagonal[:m], -k[1 : m]
+    m = k.shape[0] - 1 if by_travel else k.shape[0]
+    return diagonal[:m], -k[1:m]

@@ -14,7 +14,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pullback.forward.balance import tangent
-from pullback.forward.solve import Equilibrium, free_nodes, positive
+from pullback.forward.solve import Equilibrium, free_nodes, stiffnesses
 from pullback.forward.tridiagonal import Tridiagonal
 
 Array = NDArray[np.float64]
@@ -33,9 +33,7 @@ class Gradient:
 
 
 def _factors(state: Equilibrium) -> Tridiagonal:
-    bar = state.bar
-    slope = positive(state.element.slope, state.end_force)
-    return Tridiagonal(*tangent(bar, slope, free_nodes(bar, state.by_travel)))
+    return Tridiagonal(*tangent(stiffnesses(state.bar, state.element.slope), state.by_travel))
 
 
 def adjoint(state: Equilibrium, position: Array, end_force: Array, held_force: Array) -> Gradient:
@@ -51,7 +49,7 @@ def adjoint(state: Equilibrium, position: Array, end_force: Array, held_force: A
     if state.by_travel:
         a[-1] = -end_force
         right[-1] += k_last * a[-1]
-    a[free] = _factors(state).solve(right)
+    a[free] = _factors(state).solve(np.nan_to_num(right))
     drive = position[-1] + k_last * (a[-2] - a[-1]) if state.by_travel else end_force + a[-1]
     return _contract(state, a, drive)
 

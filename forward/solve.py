@@ -63,7 +63,8 @@ def equilibrium(
     code = _codes(bar, nodal, drive, by_travel, position, element, tolerance)
     bad = np.flatnonzero(np.any((code != 0) & (code != 3), axis=0))
     if bad.size:
-        position, element = _stepped(bar, nodal, drive, by_travel, position, bad, tolerance)
+        retry = _stepped if guess is None else _afresh
+        position, element = retry(bar, nodal, drive, by_travel, position, bad, tolerance)
         code = _codes(bar, nodal, drive, by_travel, position, element, tolerance)
     # The grip's pull and the pulled end's force are the residual of the held nodes.
     end = element.force[-1] - nodal[-1]
@@ -104,11 +105,17 @@ def _rounding(bar: Bar, position: Array, element: ElementState) -> Array:
     return 16.0 * np.finfo(float).eps * np.abs(position[-1]) * np.abs(stiffest)
 
 
-def positive(slope: Array, error: Array) -> Array:
-    """dP/dstretch with a floor, and one where a lane has left the range of the law: one bad lane must not stop all."""
-    with np.errstate(invalid="ignore"):
-        floored = np.maximum(slope, 1e-3 * np.abs(slope).max(axis=0))
-    return np.where(np.isfinite(error) & np.isfinite(floored) & (floored > 0.0), floored, 1.0)
+def stiffnesses(bar: Bar, slope: Array) -> Array:
+    """A dP/dstretch / h of each element (N/mm) with a floor, so that the tangent stays positive definite.
+
+    A step and lane that has left the range of the law or of the numbers gets ones: one bad lane must not stop all.
+    """
+    k = bar.area * slope
+    k *= 1.0 / bar.h
+    top = k.max(axis=0)
+    np.maximum(k, 1e-3 * top, out=k)
+    good = (top > 1e-12) & (top < 1e12)
+    return k if np.all(good) else np.where(good, k, 1.0)
 
 
 def _largest(values: Array) -> Array:
@@ -118,7 +125,6 @@ def _largest(values: Array) -> Array:
 def _newton(
     bar: Bar, nodal: Array, drive: Array, by_travel: bool, start: Array, tolerance: float
 ) -> tuple[Array, ElementState, int]:
-    free = free_nodes(bar, by_travel)
     x = np.array(start)
     x[0] = bar.nodes[0]
     if by_travel:
@@ -130,7 +136,7 @@ def _newton(
     while count < _MAX_ITERATIONS and np.any(error > np.maximum(tolerance * _largest(state.force), rounding)):
         count += 1
         r = np.where(np.isfinite(error), r, 0.0)
-        step = Tridiagonal(*tangent(bar, positive(state.slope, error), free)).solve(-r)
+        step = Tridiagonal(*tangent(stiffnesses(bar, state.slope), by_travel)).solve(-r)
         x, state, r, error = _advance(bar, nodal, drive, by_travel, x, state, step, np.maximum(error, rounding))
         if not np.any(np.isfinite(error)):
             break
@@ -170,6 +176,17 @@ def _codes(
     code[(code == 0) & np.any(element.slope <= 0.0, axis=0)] = names.index(Outcome.UNSTABLE)
     code[~np.isfinite(r)] = names.index(Outcome.NOT_FINITE)
     return code
+
+
+def _afresh(
+    bar: Bar, nodal: Array, drive: Array, by_travel: bool, position: Array, bad: NDArray[np.intp], tolerance: float
+) -> tuple[Array, ElementState]:
+    """Solve the failed lanes once more, from the linear-elastic shape instead of the guess."""
+    sub, target = bar.take(bad), drive[:, bad]
+    start = _linear_shape(sub, target, by_travel)
+    out = np.array(position)
+    out[:, :, bad] = _newton(sub, nodal[..., bad], target, by_travel, start, tolerance)[0]
+    return out, elements(bar, out)
 
 
 def _stepped(

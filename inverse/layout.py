@@ -7,7 +7,8 @@ into named values, lanes last, and carry gradients and directions back and forth
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
+from functools import cached_property
 from typing import Protocol
 
 import numpy as np
@@ -61,6 +62,52 @@ class Scalar:
 
 
 @dataclass(frozen=True)
+class Modulus(Scalar):
+    """A modulus of the lot's law, its coordinate sheared along the pulled piece's own log stiffness kappa = s zeta.
+
+    A pull fixes modulus times exp(kappa) far better than either factor; in z itself that is a thin, curved valley in
+    (z, s, zeta). With z = q − shear kappa (a map of unit determinant) it lies along the axes. `shear` is
+    dz/dlog(modulus) at the fit; `stiffness` names zeta.
+    """
+
+    shear: float = 0.0
+    stiffness: str = ""
+
+    def _z(self, q: Array, values: Values) -> Array:
+        return q[0] - self.shear * values["stiffness_scatter"] * values[self.stiffness]
+
+    def unpack(self, q: Array, values: Values) -> Array:
+        """The prior's map of z."""
+        return self.prior.value(self._z(q, values))
+
+    def log_prior(self, q: Array, values: Values) -> Array:
+        """See `priors.log_prior`."""
+        return log_prior(self.prior, self._z(q, values))
+
+    def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
+        """Chain through the map and the shear."""
+        z = self._z(q, values)
+        g = grads[self.name] * self.prior.slope(z) - (z if self.prior.proper else 0.0)
+        s, zeta = values["stiffness_scatter"], values[self.stiffness]
+        grads["stiffness_scatter"] = grads["stiffness_scatter"] - self.shear * zeta * g
+        grads[self.stiffness] = grads[self.stiffness] - self.shear * s * g
+        return g[None]
+
+    def push(self, q: Array, values: Values, cut: slice, pushed: Values) -> Array:
+        """d value / d q, the values of the stiffness pushed already."""
+        along = values["stiffness_scatter"] * pushed[self.stiffness] + values[self.stiffness] * pushed["stiffness_scatter"]
+        row = -self.shear * along
+        row[cut] += 1.0
+        return self.prior.slope(self._z(q, values)) * row
+
+    def sheared(self, values: Values) -> Modulus:
+        """The same unknown with its shear taken at `values` (one lane)."""
+        value = values[self.name]
+        z = self.prior.coordinate(value)
+        return replace(self, shear=float((value / self.prior.slope(z))[0]))
+
+
+@dataclass(frozen=True)
 class Drive:
     """The true travel or end force of each step, flat about its reading; value (steps, lanes)."""
 
@@ -109,7 +156,7 @@ class Field:
         """Number of coefficients."""
         return self.basis.omega.size
 
-    def _log_scale(self, values: Values) -> tuple[Array, Array]:
+    def log_scale(self, values: Values) -> tuple[Array, Array]:
         """log w_k, and log of the coordinate's prior standard deviation, (m, lanes)."""
         spread, ell = values["spread"], values["correlation_length"]
         log_w = self.basis.log_weight(spread, ell)
@@ -120,19 +167,19 @@ class Field:
 
     def unpack(self, q: Array, values: Values) -> Array:
         """beta_k."""
-        log_w, log_sd = self._log_scale(values)
+        log_w, log_sd = self.log_scale(values)
         return np.exp(log_w - log_sd) * q
 
     def log_prior(self, q: Array, values: Values) -> Array:
         """Normal with the coordinate's own standard deviation."""
-        log_sd = self._log_scale(values)[1]
+        log_sd = self.log_scale(values)[1]
         z = q * np.exp(-log_sd)
         return np.sum(-0.5 * z * z - log_sd, axis=0)
 
     def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
         """Chain to the coordinates, and to spread and correlation length."""
         spread, ell = values["spread"], values["correlation_length"]
-        log_w, log_sd = self._log_scale(values)
+        log_w, log_sd = self.log_scale(values)
         scale, inverse = np.exp(log_w - log_sd), np.exp(-log_sd)
         g_beta, z = grads[self.name], q * inverse
         g_q = g_beta * scale - z * inverse
@@ -147,7 +194,7 @@ class Field:
 
     def coordinate(self, beta: Array, values: Values) -> Array:
         """q for given beta (m, lanes)."""
-        log_w, log_sd = self._log_scale(values)
+        log_w, log_sd = self.log_scale(values)
         return beta * np.exp(log_sd - log_w)
 
     def recentred(self, spread: float, ell: float, strength: Array) -> Field:
@@ -171,12 +218,12 @@ class Layout:
     blocks: Sequence[Block]
     constants: dict[str, float] = field(default_factory=dict)
 
-    @property
+    @cached_property
     def dim(self) -> int:
         """Number of coordinates."""
         return sum(b.size for b in self.blocks)
 
-    @property
+    @cached_property
     def slices(self) -> dict[str, slice]:
         """Slice of q of each block."""
         out, at = {}, 0
@@ -225,7 +272,9 @@ class Layout:
         out: Values = {k: np.zeros(self.dim) for k in self.constants}
         for b, part in self._parts(q):
             cut = self.slices[b.name]
-            if isinstance(b, Scalar):
+            if isinstance(b, Modulus):
+                out[b.name] = b.push(part, values, cut, out)
+            elif isinstance(b, Scalar):
                 out[b.name] = np.zeros(self.dim)
                 out[b.name][cut] = b.prior.slope(part[0])
             elif isinstance(b, Drive):
@@ -236,7 +285,7 @@ class Layout:
         return out
 
     def _push_field(self, b: Field, q: Array, cut: slice, values: Values, out: Values) -> Array:
-        log_w, log_sd = b._log_scale(values)
+        log_w, log_sd = b.log_scale(values)
         scale = np.exp(log_w - log_sd)
         jac = np.zeros((b.size, self.dim))
         jac[:, cut] = np.diag(scale[:, 0])

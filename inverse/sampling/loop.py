@@ -1,0 +1,126 @@
+"""Warm-up, sampling in blocks, and the stop rule; all counted in draws, never in seconds but for the last limit."""
+
+from __future__ import annotations
+
+import time
+from collections.abc import Callable
+from dataclasses import dataclass
+
+import emcee
+import numpy as np
+from numpy.typing import NDArray
+
+from pullback.inverse.laplace import Laplace
+from pullback.inverse.sampling.diagnose import Diagnosis, diagnose
+from pullback.inverse.sampling.moves import Hamiltonian
+
+Array = NDArray[np.float64]
+Progress = Callable[[str, float], None]
+
+WALKERS = 8
+SETTLE, ESTIMATE, TUNE = 60, 240, 60
+"""Warm-up: settle the step, estimate the metric, tune the step to it; then both are frozen."""
+LEAST_DRAWS, BLOCK, MOST_DRAWS = 500, 250, 20_000
+
+
+@dataclass(frozen=True)
+class Draws:
+    """Draws (chains, draws, dim) of the posterior with what the sampler says of them."""
+
+    q: Array
+    log_density: Array
+    acceptance: Array
+    energy: Array
+    diverging: NDArray[np.bool_]
+    diagnosis: Diagnosis
+    step: float
+    leaps: float
+    evaluations: int
+    warm_up: int
+    seconds: float
+    stopped: str
+
+
+def sample(
+    start: Laplace, seed: int, effective: int, max_minutes: float, progress: Progress = lambda stage, share: None
+) -> Draws:
+    """Sample the posterior from its Laplace approximation until every unknown has `effective` draws."""
+    began, posterior = time.monotonic(), start.posterior
+    dim = posterior.layout.dim
+    move = Hamiltonian(posterior.value_and_gradient, np.linalg.cholesky(start.covariance), seed, 0.5 * dim**-0.25)
+    sampler = emcee.EnsembleSampler(WALKERS, dim, posterior.log_density, moves=move, vectorize=True)
+    state = emcee.State(_starting_points(start, seed), log_prob=None)
+    state = _warm_up(sampler, move, state, start, progress)
+    blocks: list[Array] = []
+    stopped = ""
+    while not stopped:
+        n = LEAST_DRAWS if not blocks else BLOCK
+        done = sum(b.shape[1] for b in blocks)
+        state = _run(sampler, state, n, lambda k, done=done: progress("sampling", (done + k) / max(done + n, 1)))  # type: ignore[misc]
+        blocks.append(sampler.get_chain().swapaxes(0, 1))
+        chain, log_p = _append(blocks), sampler.get_log_prob()
+        blocks_log = log_p if len(blocks) == 1 else np.concatenate((blocks_log, log_p))
+        sampler.reset()
+        diagnosis = diagnose(chain, posterior.layout.names())
+        stopped = _stop(diagnosis, effective, began, max_minutes)
+    return Draws(
+        chain, blocks_log.T, np.array(move.acceptance).T, np.array(move.energy).T, np.array(move.diverged).T, diagnosis,
+        move.step, float(np.mean(move.leaps)), move.evaluations, SETTLE + ESTIMATE + TUNE, time.monotonic() - began, stopped,
+    )  # fmt: skip
+
+
+def _starting_points(start: Laplace, seed: int) -> Array:
+    """Laplace draws with finite density, drawn in towards the mean where they have none."""
+    posterior = start.posterior
+    points = start.draws[:WALKERS].copy()
+    for pull in (1.0, 0.7, 0.4, 0.2, 0.0):
+        bad = ~np.isfinite(posterior.log_density(points))
+        if not np.any(bad):
+            return points
+        points[bad] = start.mean + pull * (start.draws[:WALKERS][bad] - start.mean)
+    raise RuntimeError("no starting point with finite density near the fit")
+
+
+def _warm_up(
+    sampler: emcee.EnsembleSampler, move: Hamiltonian, state: emcee.State, start: Laplace, progress: Progress
+) -> emcee.State:
+    total = SETTLE + ESTIMATE + TUNE
+    move.adapt()
+    state = _run(sampler, state, SETTLE, lambda k: progress("warm-up", k / total))
+    sampler.reset()
+    state = _run(sampler, state, ESTIMATE, lambda k: progress("warm-up", (SETTLE + k) / total))
+    seen = sampler.get_chain(flat=True)
+    sampler.reset()
+    n, dim = seen.shape
+    # Shrinkage n/(n + 5 dim) towards Laplace: few draws must not invent directions.
+    share = n / (n + 5.0 * dim)
+    move.root = np.linalg.cholesky(share * np.cov(seen.T).reshape(dim, dim) + (1.0 - share) * start.covariance)
+    move.freeze()
+    move.adapt()
+    state = _run(sampler, state, TUNE, lambda k: progress("warm-up", (SETTLE + ESTIMATE + k) / total))
+    sampler.reset()
+    move.freeze()
+    move.forget()
+    return state
+
+
+def _run(sampler: emcee.EnsembleSampler, state: emcee.State, n: int, tick: Callable[[int], None]) -> emcee.State:
+    for k, last in enumerate(sampler.sample(state, iterations=n, skip_initial_state_check=True), 1):
+        state = last
+        if k % 10 == 0:
+            tick(k)
+    return state
+
+
+def _append(blocks: list[Array]) -> Array:
+    return blocks[0] if len(blocks) == 1 else np.concatenate(blocks, axis=1)
+
+
+def _stop(diagnosis: Diagnosis, effective: int, began: float, max_minutes: float) -> str:
+    if diagnosis.least >= effective and diagnosis.rhat_max <= 1.01:
+        return f"every unknown has {effective} effective draws"
+    if (time.monotonic() - began) / 60.0 >= max_minutes:
+        return f"the limit of {max_minutes:g} minutes was reached"
+    if diagnosis.draws >= MOST_DRAWS:
+        return f"the limit of {MOST_DRAWS} draws a chain was reached"
+    return ""

@@ -1,0 +1,13 @@
+"""Strength scatter, one family a file."""
+
+from pullback.inverse.scatter.base import Scatter
+from pullback.inverse.scatter.lognormal import LogNormalStrength
+from pullback.inverse.scatter.weibull import Weibull
+
+
+def scatter(name: str, reference_volume: float) -> Scatter:
+    """The family `name`; KeyError for one that is not known."""
+    return {"weibull": Weibull(reference_volume), "lognormal": LogNormalStrength(reference_volume)}[name]
+
+
+__all__ = ["LogNormalStrength", "Scatter", "Weibull", "scatter"]
