@@ -98,7 +98,7 @@ def residual(force: Array, nodal: Array) -> Array:
 
 
 def tangent(k: Array, by_travel: bool) -> tuple[Array, Array]:
-    """Diagonal and off-diagonal of dR/dx on the free nodes, from the elements' stiffnesses k (n, steps, lanes), N/mm."""
+    """Diagonal and off-diagonal of dR/dx on the free nodes; k (n, steps, lanes): the elements' stiffnesses, N/mm."""
     diagonal = k.copy()
     diagonal[:-1] += k[1:]
     m = k.shape[0] - 1 if by_travel else k.shape[0]

@@ -37,7 +37,7 @@ def _factors(state: Equilibrium) -> Tridiagonal:
 
 
 def adjoint(state: Equilibrium, position: Array, end_force: Array, held_force: Array) -> Gradient:
-    """Gradient of scalars whose derivatives are `position` (n+1, steps, lanes), `end_force`, `held_force` (steps, lanes)."""
+    """Gradient of scalars whose derivatives are `position` (n+1, steps, lanes) and the two forces (steps, lanes)."""
     bar, e = state.bar, state.element
     k_first = bar.area[0] * e.slope[0] / bar.h[0]
     k_last = bar.area[-1] * e.slope[-1] / bar.h[-1]
@@ -85,7 +85,7 @@ class Directions:
 
 @dataclass(frozen=True)
 class Change:
-    """Change of a state per unit of each direction: `position` (n+1, steps, p) mm, `end_force`, `held_force` (steps, p)."""
+    """Change of a state per unit of each direction: `position` (n+1, steps, p) mm, both forces (steps, p) N."""
 
     position: Array
     end_force: Array

@@ -78,14 +78,12 @@ def free_nodes(bar: Bar, by_travel: bool) -> slice:
 
 
 def _linear_shape(bar: Bar, drive: Array, by_travel: bool) -> Array:
-    """Positions with the excess stretch shared out as 1/A, scaled to the travel, or to the force at the rest modulus."""
+    """Positions with elongation as 1/A, scaled to the travel, or to the force at the modulus of rest."""
     ones = np.ones((1, 1, bar.lanes))
     e = bar.law.stress_and_slope(ones, bar.theta)[1] * bar.stiffness
     unit = bar.h / (e * bar.area)
-    if by_travel:
-        scale = drive / unit.sum(axis=0)
-    else:
-        scale = np.minimum(drive, 2.0 * e[0] * bar.area.min(axis=0))
+    most = 2.0 * e[0] * bar.area.min(axis=0)
+    scale = drive / unit.sum(axis=0) if by_travel else np.minimum(drive, most)
     growth = np.zeros((bar.nodes.size, *drive.shape))
     np.cumsum(unit * scale[None], axis=0, out=growth[1:])
     return bar.nodes[:, None, None] + growth
@@ -106,14 +104,13 @@ def _rounding(bar: Bar, position: Array, element: ElementState) -> Array:
 
 
 def stiffnesses(bar: Bar, slope: Array) -> Array:
-    """A dP/dstretch / h of each element (N/mm) with a floor, so that the tangent stays positive definite.
+    """A dP/dstretch / h of each element (N/mm), the slope with a floor, so that the tangent stays positive definite.
 
     A step and lane that has left the range of the law or of the numbers gets ones: one bad lane must not stop all.
     """
-    k = bar.area * slope
-    k *= 1.0 / bar.h
+    k = np.maximum(slope, 1e-3 * slope.max(axis=0))
+    k *= bar.area / bar.h
     top = k.max(axis=0)
-    np.maximum(k, 1e-3 * top, out=k)
     good = (top > 1e-12) & (top < 1e12)
     return k if np.all(good) else np.where(good, k, 1.0)
 
@@ -172,7 +169,8 @@ def _codes(
     r = _largest(_free_residual(bar, nodal, drive, by_travel, element.force))
     scale = _largest(element.force)
     code = np.zeros(r.shape, np.int8)
-    code[r > np.maximum(tolerance * scale, 4.0 * _rounding(bar, position, element))] = names.index(Outcome.NOT_CONVERGED)
+    allowed = np.maximum(tolerance * scale, 4.0 * _rounding(bar, position, element))
+    code[r > allowed] = names.index(Outcome.NOT_CONVERGED)
     code[(code == 0) & np.any(element.slope <= 0.0, axis=0)] = names.index(Outcome.UNSTABLE)
     code[~np.isfinite(r)] = names.index(Outcome.NOT_FINITE)
     return code

@@ -30,10 +30,9 @@ def recentred(fit: Fit) -> Layout:
     posterior, layout, q = fit.posterior, fit.posterior.layout, fit.best.q
     information = np.sum(posterior.jacobian(q) ** 2, axis=0)
     values = layout.unpack(q[None])
+    spread, ell = (float(values[k][0]) if k in values else 0.0 for k in ("spread", "correlation_length"))
     blocks = [
-        b.recentred(float(values["spread"][0]), float(values["correlation_length"][0]), information[layout.slices[b.name]])
-        if isinstance(b, Field)
-        else b
+        b.recentred(spread, ell, information[layout.slices[b.name]]) if isinstance(b, Field) else b
         for b in layout.blocks
     ]
     return Layout(blocks, layout.constants)

@@ -35,7 +35,8 @@ class Block(Protocol):
         """Log prior density of q (lanes,)."""
 
     def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
-        """d(log prior + f)/dq (size, lanes), f's derivatives by value being in `grads`; adds to grads of earlier blocks."""
+        """d(log prior + f)/dq (size, lanes), f's derivatives by value being in `grads`; adds to those of earlier
+        blocks."""
 
 
 @dataclass(frozen=True)
@@ -95,8 +96,8 @@ class Modulus(Scalar):
 
     def push(self, q: Array, values: Values, cut: slice, pushed: Values) -> Array:
         """d value / d q, the values of the stiffness pushed already."""
-        along = values["stiffness_scatter"] * pushed[self.stiffness] + values[self.stiffness] * pushed["stiffness_scatter"]
-        row = -self.shear * along
+        s, zeta = values["stiffness_scatter"], values[self.stiffness]
+        row = -self.shear * (s * pushed[self.stiffness] + zeta * pushed["stiffness_scatter"])
         row[cut] += 1.0
         return self.prior.slope(self._z(q, values)) * row
 
@@ -198,7 +199,7 @@ class Field:
         return beta * np.exp(log_sd - log_w)
 
     def recentred(self, spread: float, ell: float, strength: Array) -> Field:
-        """The same field with coefficients centred by `strength`, the diagonal of JᵀJ at the fit (see the thresholds)."""
+        """The same field with coefficients centred by `strength`, the diagonal of JᵀJ at the fit (see thresholds)."""
         return Field(
             self.name, self.unit, self.basis, spread, ell,
             (strength > CENTRED_IN_SPREAD).astype(float), (strength > CENTRED_IN_ELL).astype(float),

@@ -31,7 +31,8 @@ class Names:
     @classmethod
     def of(cls, piece: str, by_travel: bool) -> Names:
         """`P1 section`, `P1 field`, `P1 travel` or `P1 force`, `P1 stiffness`."""
-        return cls(f"{piece} section", f"{piece} field", f"{piece} {'travel' if by_travel else 'force'}", f"{piece} stiffness")
+        drive = "travel" if by_travel else "force"
+        return cls(f"{piece} section", f"{piece} field", f"{piece} {drive}", f"{piece} stiffness")
 
 
 @dataclass(frozen=True)

@@ -1,7 +1,7 @@
 """The contract of an axial load spread along the part.
 
-Nodal forces have shape (nodes, steps, lanes), areas (elements, 1, lanes), density a scalar or (lanes,). Every load here is dead: it
-does not depend on the shape the part takes.
+Nodal forces have shape (nodes, steps, lanes), areas (elements, 1, lanes), density a scalar or (lanes,). Every load
+here is dead: it does not depend on the shape the part takes.
 """
 
 from __future__ import annotations

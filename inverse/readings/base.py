@@ -31,7 +31,7 @@ class Term(Protocol):
         """Log-density of the readings (lanes,); its derivatives are added to `cot`."""
 
     def chi_square(self, values: Values, prediction: Prediction | None) -> Array:
-        """Discrepancy of the readings from what is expected (lanes,), chi-square with `count` degrees if all is right."""
+        """Discrepancy of the readings (lanes,), chi-square with `count` degrees of freedom if all is right."""
 
     def simulate_chi_square(
         self, values: Values, prediction: Prediction | None, rng: np.random.Generator

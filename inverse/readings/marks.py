@@ -99,7 +99,10 @@ class Marks:
         return self._decorrelate(seen, seen.r)[..., 0][self.read]
 
     def whitened_jacobian(self, values: Values, prediction: Prediction | None, tangent: Tangent | Values) -> Array:
-        """Their derivatives with each mark's most probable shift held (Kaufman, BIT 15 (1975) 49): exact in the gradient."""
+        """Their derivatives with each mark's most probable shift held: exact in the gradient.
+
+        (Variable projection after Kaufman, BIT 15 (1975) 49.)
+        """
         assert prediction is not None and isinstance(tangent, Tangent)
         x, stretch = self._at_marks(prediction)
         seen, pushed = self._see(values, x, stretch), tangent.values

@@ -23,7 +23,14 @@ class Sections(GaussianTerm):
     kind = "sections"
 
     def __init__(
-        self, piece: Piece, station: Array, area: Array, sigma: Array, placement: float, log_outline: Array, slope: Array
+        self,
+        piece: Piece,
+        station: Array,
+        area: Array,
+        sigma: Array,
+        placement: float,
+        log_outline: Array,
+        slope: Array,
     ) -> None:
         super().__init__(np.log(area), np.hypot(sigma, placement * slope))
         self.piece, self.station, self.slope, self.log_outline = piece.name, station, slope, log_outline

@@ -5,6 +5,7 @@ from __future__ import annotations
 import time
 from collections.abc import Callable
 from dataclasses import dataclass
+from functools import partial
 
 import emcee
 import numpy as np
@@ -51,22 +52,25 @@ def sample(
     sampler = emcee.EnsembleSampler(WALKERS, dim, posterior.log_density, moves=move, vectorize=True)
     state = emcee.State(_starting_points(start, seed), log_prob=None)
     state = _warm_up(sampler, move, state, start, progress)
-    blocks: list[Array] = []
-    stopped = ""
+    chain, log_p, stopped = np.empty((WALKERS, 0, dim)), np.empty((WALKERS, 0)), ""
     while not stopped:
-        n = LEAST_DRAWS if not blocks else BLOCK
-        done = sum(b.shape[1] for b in blocks)
-        state = _run(sampler, state, n, lambda k, done=done: progress("sampling", (done + k) / max(done + n, 1)))  # type: ignore[misc]
-        blocks.append(sampler.get_chain().swapaxes(0, 1))
-        chain, log_p = _append(blocks), sampler.get_log_prob()
-        blocks_log = log_p if len(blocks) == 1 else np.concatenate((blocks_log, log_p))
+        n, done = (BLOCK, chain.shape[1]) if chain.shape[1] else (LEAST_DRAWS, 0)
+        tick = partial(_tick, progress, done, n)
+        state = _run(sampler, state, n, tick)
+        chain = np.concatenate((chain, sampler.get_chain().swapaxes(0, 1)), axis=1)
+        log_p = np.concatenate((log_p, sampler.get_log_prob().T), axis=1)
         sampler.reset()
         diagnosis = diagnose(chain, posterior.layout.names())
         stopped = _stop(diagnosis, effective, began, max_minutes)
     return Draws(
-        chain, blocks_log.T, np.array(move.acceptance).T, np.array(move.energy).T, np.array(move.diverged).T, diagnosis,
-        move.step, float(np.mean(move.leaps)), move.evaluations, SETTLE + ESTIMATE + TUNE, time.monotonic() - began, stopped,
+        chain, log_p, np.array(move.acceptance).T, np.array(move.energy).T, np.array(move.diverged).T, diagnosis,
+        move.step, float(np.mean(move.leaps)), move.evaluations, SETTLE + ESTIMATE + TUNE,
+        time.monotonic() - began, stopped,
     )  # fmt: skip
+
+
+def _tick(progress: Progress, done: int, n: int, k: int) -> None:
+    progress("sampling", (done + k) / (done + n))
 
 
 def _starting_points(start: Laplace, seed: int) -> Array:
@@ -110,10 +114,6 @@ def _run(sampler: emcee.EnsembleSampler, state: emcee.State, n: int, tick: Calla
         if k % 10 == 0:
             tick(k)
     return state
-
-
-def _append(blocks: list[Array]) -> Array:
-    return blocks[0] if len(blocks) == 1 else np.concatenate(blocks, axis=1)
 
 
 def _stop(diagnosis: Diagnosis, effective: int, began: float, max_minutes: float) -> str:

@@ -39,3 +39,9 @@ class Scatter(Protocol):
         self, measure: Array, volume: Array, parameters: Sequence[Array]
     ) -> tuple[Array, Array, Array, tuple[Array, Array]]:
         """H (..., lanes) of bodies of n sections, dH/dmeasure and dH/dlog volume (n, ..., lanes), dH/dparameters."""
+
+    def log_hazard(self, log_measure: Array, volume: Array, first: float, second: float) -> Array:
+        """log H (...) of bodies whose sections (n, ...) have the given log measure, −inf where not loaded; one draw."""
+
+    def shares(self, log_measure: Array, volume: Array, first: float, second: float) -> Array:
+        """Probability that each section (n, ...) is where the body fails, at these measures; one draw."""

@@ -60,3 +60,13 @@ class LogNormalStrength:
         by_measure = np.zeros_like(measure)
         np.put_along_axis(by_measure, worst, (rate / (sd * s))[None], axis=0)
         return -log_tail, by_measure, np.zeros_like(measure), (-rate / (sd * median), -rate * z / sd)
+
+    def log_hazard(self, log_measure: Array, volume: Array, first: float, second: float) -> Array:
+        """log(−log Phi(−z)) of the most stressed section."""
+        z = (log_measure.max(axis=0) - np.log(first)) / second
+        with np.errstate(divide="ignore"):
+            return np.log(-special.log_ndtr(-z))
+
+    def shares(self, log_measure: Array, volume: Array, first: float, second: float) -> Array:
+        """One at the most stressed section."""
+        return (np.arange(log_measure.shape[0])[:, None] == np.argmax(log_measure, axis=0)[None]).astype(float)

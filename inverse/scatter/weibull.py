@@ -15,7 +15,7 @@ Array = NDArray[np.float64]
 
 @dataclass(frozen=True)
 class Weibull:
-    """Weibull weakest link over the unstretched volume, s0 being the characteristic strength of `reference_volume` mm³."""
+    """Weakest link over the unstretched volume; s0: characteristic strength of `reference_volume` mm³."""
 
     reference_volume: float
     name: str = "weibull"
@@ -59,3 +59,16 @@ class Weibull:
         each = np.where(loaded, np.exp(m * t) * volume / self.reference_volume, 0.0)
         total = each.sum(axis=0)
         return total, m * each / safe, each, (-m * total / s0, (each * t).sum(axis=0))
+
+    def log_hazard(self, log_measure: Array, volume: Array, first: float, second: float) -> Array:
+        """log of the sum over sections."""
+        each = second * (log_measure - np.log(first)) + np.log(volume / self.reference_volume)
+        top = each.max(axis=0)
+        with np.errstate(invalid="ignore"):
+            return np.where(np.isfinite(top), top + np.log(np.exp(each - top).sum(axis=0)), top)
+
+    def shares(self, log_measure: Array, volume: Array, first: float, second: float) -> Array:
+        """Each section's share of the hazard."""
+        each = second * log_measure + np.log(volume)
+        weight = np.exp(each - each.max(axis=0))
+        return weight / weight.sum(axis=0)

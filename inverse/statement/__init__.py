@@ -1,0 +1,1 @@
+"""From draws to the statement: capacity of parts, guaranteed loads, margins, verdict."""

@@ -1,0 +1,74 @@
+"""Guaranteed loads, margins and shortfall from the capacity of each draw."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+Array = NDArray[np.float64]
+
+FEW_FAILURES = 10
+"""Below so many distinct failures no reliability above 0.95 is guaranteed."""
+
+
+@dataclass(frozen=True)
+class Guaranteed:
+    """Load that `reliability` of the parts carry with `confidence`; margin and `met` against one demand.
+
+    `value` and `margin` are None where withheld, for `reason`.
+    """
+
+    reliability: float
+    confidence: float
+    value: float | None
+    margin: float | None
+    met: str
+    reason: str | None = None
+
+
+@dataclass(frozen=True)
+class Margin:
+    """Margin of one demand: `draws` predictive margins, guaranteed values, shortfall probability of each draw."""
+
+    demand: str
+    required: float
+    required_draws: Array
+    draws: Array
+    guaranteed: list[Guaranteed]
+    shortfall: Array
+    quantile_margins: Array
+    """Margin of each stated share of parts, (draws, reliabilities)."""
+
+
+def lower_bound(values: Array, confidence: float, weights: Array | None = None) -> float:
+    """The (1 − confidence) quantile of draws, weighted where weights are given."""
+    if weights is None:
+        return float(np.quantile(values, 1.0 - confidence))
+    order = np.argsort(values)
+    mass = np.cumsum(weights[order]) - 0.5 * weights[order]
+    return float(np.interp(1.0 - confidence, mass / weights.sum(), values[order]))
+
+
+def margin(
+    demand: str, required: Array, capacity: Array, quantiles: Array, shortfall: Array,
+    reliability: tuple[float, ...], confidence: float, failures: int,
+) -> Margin:  # fmt: skip
+    """Margin of one demand.
+
+    `required` (draws,) N, factor included; `capacity` (draws,) one part's a draw; `quantiles` (draws, reliabilities)
+    the load that each share of parts carries; `shortfall` (draws,) share of parts that fall short; `failures`:
+    distinct coupon failures.
+    """
+    ratio = quantiles / required[:, None]
+    found = []
+    for k, r in enumerate(reliability):
+        if r > 0.95 and failures < FEW_FAILURES:
+            reason = f"{failures} distinct failures; {FEW_FAILURES} are needed for a reliability of {100 * r:g} %"
+            found.append(Guaranteed(r, confidence, None, None, "not shown", reason))
+            continue
+        value = lower_bound(quantiles[:, k], confidence)
+        least = lower_bound(ratio[:, k], confidence) - 1.0
+        found.append(Guaranteed(r, confidence, value, least, "met" if least >= 0.0 else "not met"))
+    return Margin(demand, float(np.median(required)), required, capacity / required - 1.0, found, shortfall, ratio - 1.0)

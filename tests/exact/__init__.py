@@ -1,0 +1,1 @@
+"""Checks against closed forms and identities that hold exactly."""
