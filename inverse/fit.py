@@ -90,6 +90,13 @@ def fit(posterior: Posterior, seed: int, progress: Progress = lambda share: None
     return Fit(posterior, sorted(nodes, key=lambda n: -n.log_evidence), hyper, free, costs)
 
 
+def first_fit(posterior: Posterior, seed: int) -> Array:
+    """The best least-squares point (dim,) at the middle of the hyper-parameters' priors, before anything else."""
+    hyper = [posterior.layout.slices[n].start for n in HYPER if posterior.layout.scalar(n)]
+    free = np.setdiff1d(np.arange(posterior.layout.dim), np.array(hyper, int))
+    return _best_start(posterior, np.zeros(posterior.layout.dim), free, seed)[0]
+
+
 def _sheared(posterior: Posterior, q: Array) -> tuple[Posterior, Array]:
     """The posterior with its moduli sheared at the point q, and q in the new coordinates."""
     layout, q = posterior.layout, q.copy()

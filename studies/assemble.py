@@ -26,7 +26,8 @@ from pullback.inverse.readings.strengths import CouponStrength, Survival
 from pullback.inverse.readings.travel import TravelReadings
 from pullback.inverse.scatter import Scatter, scatter
 from pullback.studies.hardness import modulus_prior
-from pullback.studies.study import Gauge, OutlineTable, Pull, Study
+from pullback.studies.outline_geometry import outline_of
+from pullback.studies.study import Gauge, Pull, Study
 
 Array = NDArray[np.float64]
 
@@ -73,16 +74,6 @@ def assemble(study: Study, elements: int = ELEMENTS) -> Model:
     return Model(study, posterior, law, outline, piece, criterion, strength, read, assumed)
 
 
-def outline_of(table: OutlineTable) -> Outline:
-    """The outline as the forward model takes it."""
-    if table.area is not None:
-        return Outline(table.station, (table.area,))
-    assert table.width is not None
-    if table.thickness is None:
-        return Outline(table.station, (table.width, table.width), 0.25 * np.pi)
-    return Outline(table.station, (table.width, table.thickness))
-
-
 def step_labels(pull: Pull) -> tuple[str, ...]:
     """Steps in the order of the readings, then of marks without a reading."""
     marks = pull.marks.step if pull.marks is not None else ()
@@ -98,7 +89,8 @@ def loads_of(axis: str) -> tuple[Load, ...]:
 def reference_volume(study: Study) -> float:
     """Volume that the strength's scale refers to: the coupons' median."""
     assert study.strength is not None
-    return float(np.median(study.strength.coupons.volume))
+    volume = study.strength.coupons.volume
+    return float(np.median(volume)) if np.all(np.isfinite(volume)) else 1.0
 
 
 def largest_stretch_read(study: Study) -> float:
@@ -187,7 +179,7 @@ def _unknowns(
     error("force_scale", "", g.force_scale)
     error("force_zero", "N", g.force_zero)
     error("travel_zero", "mm", g.travel_zero)
-    error("coupon_scale", "", g.coupon_scale, _pairs(study) is not None)
+    error("coupon_scale", "", g.coupon_scale, coupon_pairs(study) is not None)
     if piece.basis is not None:
         add("spread", "", variation.spread)
         add("correlation_length", "mm", variation.correlation_length)
@@ -312,9 +304,9 @@ def coupon_measure(study: Study) -> Array:
     return coupons.elongation if study.strength.criterion == "elongation" else coupons.stress
 
 
-def _pairs(study: Study) -> NDArray[np.bool_] | None:
-    """Coupons that report both columns, or None."""
-    if study.strength is None:
+def coupon_pairs(study: Study) -> NDArray[np.bool_] | None:
+    """Coupons that report both columns, where their errors are given; or None."""
+    if study.strength is None or (study.gauges.coupon_stress is None and study.gauges.coupon_elongation is None):
         return None
     both = np.isfinite(study.strength.coupons.elongation) & np.isfinite(study.strength.coupons.stress)
     return both if np.any(both) else None
@@ -326,8 +318,8 @@ def _strength_terms(
     assert study.strength is not None
     coupons, terms = study.strength.coupons, []
     terms.append(CouponStrength(strength, coupon_measure(study), coupons.volume, coupons.broke))
-    both = _pairs(study)
-    if both is not None and study.gauges.coupon_stress is not None:
+    both = coupon_pairs(study)
+    if both is not None:
         terms.append(_coupon_stress(study, piece.law, both, np.ones(int(both.sum()))))
     terms.append(Survival(pull.piece, criterion, strength, _last_step(pull, piece)))
     return terms
@@ -335,18 +327,18 @@ def _strength_terms(
 
 def _coupon_stress(study: Study, law: Law, both: NDArray[np.bool_], slope: Array) -> CouponStress:
     """`slope`: d log stress / d log stretch at each coupon's break, through which the elongation's error counts."""
-    assert study.strength is not None and study.gauges.coupon_stress is not None
+    assert study.strength is not None
     coupons, g = study.strength.coupons, study.gauges
     stretch, stress = 1.0 + coupons.elongation[both], coupons.stress[both]
-    own = g.coupon_stress.sigma(stress) / stress  # type: ignore[union-attr]
+    own = g.coupon_stress.sigma(stress) / stress if g.coupon_stress else np.zeros(stress.size)
     along = g.coupon_elongation.sigma(stretch - 1.0) if g.coupon_elongation else np.zeros(stretch.size)
     return CouponStress(law, stretch, np.log(stress), np.hypot(own, slope * along / stretch))
 
 
 def with_coupon_slope(model: Model, q: Array) -> Model:
     """The same model with the coupons' elongation error carried through the law's slope at the fit q (dim,)."""
-    both, study = _pairs(model.study), model.study
-    if both is None or study.gauges.coupon_stress is None or study.gauges.coupon_elongation is None:
+    both, study = coupon_pairs(model.study), model.study
+    if both is None or study.gauges.coupon_elongation is None:
         return model
     assert study.strength is not None
     values = model.posterior.layout.unpack(q[None])

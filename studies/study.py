@@ -122,7 +122,7 @@ class LawSpec:
 
 @dataclass(frozen=True)
 class Pull:
-    """One pull of one piece."""
+    """One pull of one piece; `mass` (g) as weighed, `mass_outside` what of that lies outside of the length."""
 
     piece: str
     driven_by: str

@@ -6,6 +6,7 @@ along. 'Draws' are random numbers around chosen values, not a posterior.
 
 from __future__ import annotations
 
+import zlib
 from dataclasses import dataclass
 from functools import cached_property
 
@@ -47,21 +48,22 @@ class Numbers:
 
     seed: int = 11
 
-    @cached_property
-    def rng(self) -> np.random.Generator:
-        return np.random.default_rng(self.seed)
+    def stream(self, name: str) -> np.random.Generator:
+        """Random numbers of one quantity, the same in whatever order quantities are asked for."""
+        return np.random.default_rng([self.seed, zlib.crc32(name.encode())])
 
     @cached_property
     def law(self) -> dict[str, Array]:
         """(chain, draw) per law parameter, correlated as curve fits are."""
         corr = np.array([[1.0, -0.75, 0.55], [-0.75, 1.0, -0.9], [0.55, -0.9, 1.0]])
-        z = self.rng.multivariate_normal(np.zeros(3), corr, size=(CHAINS, DRAWS))
+        z = self.stream("law").multivariate_normal(np.zeros(3), corr, size=(CHAINS, DRAWS))
         return {name: m + s * z[..., k] for k, (name, (m, s)) in enumerate(CENTRE.items())}
 
     @cached_property
     def other(self) -> dict[str, Array]:
         """(chain, draw) of the unknowns beside the law."""
-        normal, lognormal = self.rng.normal, self.rng.lognormal
+        stream = self.stream("other")
+        normal, lognormal = stream.normal, stream.lognormal
         shape = (CHAINS, DRAWS)
         return {
             "lot": normal(0.006, 0.011, shape),
@@ -81,7 +83,8 @@ class Numbers:
         """(thinned draws, stations) of the section, mm²."""
         waves = np.sin(np.outer(np.arange(1, 5), self.station) * np.pi / LENGTH)
         true = np.array([0.024, -0.02, 0.012, 0.008]) @ waves
-        wobble = self.rng.normal(0.0, 0.004, (THINNED, 4)) @ waves + self.rng.normal(0, 0.006, (THINNED, 1))
+        stream = self.stream("area")
+        wobble = stream.normal(0.0, 0.004, (THINNED, 4)) @ waves + stream.normal(0, 0.006, (THINNED, 1))
         return outline(self.station) * np.exp(true + wobble)
 
     def thinned(self, name: str) -> Array:
@@ -122,10 +125,10 @@ class Numbers:
     @cached_property
     def capacity(self) -> Array:
         """(thinned draws, 400 parts) of the next part's load at failure, N."""
-        shape = (THINNED, 400)
+        shape, stream = (THINNED, 400), self.stream("capacity")
         scale = self.other["strength_scale"].reshape(-1)[:THINNED, None]
         modulus = self.other["strength_modulus"].reshape(-1)[:THINNED, None]
-        elongation = 0.93 * scale * (-np.log(self.rng.random(shape))) ** (1.0 / modulus)
-        section = outline(np.array([60.0])) * np.exp(self.rng.normal(0.0, 0.03, shape))
+        elongation = 0.93 * scale * (-np.log(stream.random(shape))) ** (1.0 / modulus)
+        section = outline(np.array([60.0])) * np.exp(stream.normal(0.0, 0.03, shape))
         loads = [np.interp(1.0 + elongation[d], _GRID, self.curves[d]) for d in range(THINNED)]
         return np.stack(loads) * section

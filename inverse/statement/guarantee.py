@@ -52,16 +52,15 @@ def lower_bound(values: Array, confidence: float, weights: Array | None = None) 
 
 
 def margin(
-    demand: str, required: Array, capacity: Array, quantiles: Array, shortfall: Array,
-    reliability: tuple[float, ...], confidence: float, failures: int,
+    demand: str, required: Array, capacity: Array, ratio: Array, shortfall: Array,
+    reliability: tuple[float, ...], confidence: float, failures: int, quantiles: Array,
 ) -> Margin:  # fmt: skip
     """Margin of one demand.
 
-    `required` (draws,) N, factor included; `capacity` (draws,) one part's a draw; `quantiles` (draws, reliabilities)
-    the load that each share of parts carries; `shortfall` (draws,) share of parts that fall short; `failures`:
-    distinct coupon failures.
+    `required` (draws,) N, factor included; `capacity` (draws,) one part's a draw; `ratio` (draws, reliabilities)
+    capacity over requirement that each share of parts reaches; `quantiles`, of the same shape, the load that each share
+    carries, N; `shortfall` (draws,) share of parts that fall short; `failures`: distinct coupon failures.
     """
-    ratio = quantiles / required[:, None]
     found = []
     for k, r in enumerate(reliability):
         if r > 0.95 and failures < FEW_FAILURES:
@@ -71,4 +70,5 @@ def margin(
         value = lower_bound(quantiles[:, k], confidence)
         least = lower_bound(ratio[:, k], confidence) - 1.0
         found.append(Guaranteed(r, confidence, value, least, "met" if least >= 0.0 else "not met"))
-    return Margin(demand, float(np.median(required)), required, capacity / required - 1.0, found, shortfall, ratio - 1.0)
+    middle = float(np.median(required))
+    return Margin(demand, middle, required, capacity / required - 1.0, found, shortfall, ratio - 1.0)

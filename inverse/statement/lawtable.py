@@ -18,12 +18,14 @@ _SMALLEST = 1e-3
 
 @dataclass(frozen=True)
 class LawTable:
-    """Rising part of the law from stretch 1.001 up: logs of stress, of the measure and of elongation, and energy.
+    """Rising part of the law, from stretch 1.001 up, at even steps of log stress.
 
-    `limit`: the largest stress the law carries before its first maximum, inf where it rises over the whole table.
+    `start`, `step`: first log stress and its step; `log_measure`, `log_elongation`, `energy` at each; `limit`: the
+    largest stress the law carries before its first maximum, inf where it rises over the whole table.
     """
 
-    log_stress: Array
+    start: float
+    step: float
     log_measure: Array
     log_elongation: Array
     energy: Array
@@ -32,41 +34,48 @@ class LawTable:
     @classmethod
     def of(cls, law: Law, theta: Array, criterion: Criterion, largest: float) -> LawTable:
         """Table up to the stretch `largest`; `theta` (k,)."""
-        elongation = np.geomspace(_SMALLEST, largest - 1.0, _POINTS)
-        stretch = 1.0 + elongation
+        log_elongation = np.linspace(np.log(_SMALLEST), np.log(largest - 1.0), _POINTS)
+        stretch = 1.0 + np.exp(log_elongation)
         stress = law.stress(stretch, theta)
         rising = np.concatenate(([True], np.diff(stress) > 0.0)) & (stress > 0.0)
         n = _POINTS if np.all(rising) else max(int(np.argmin(rising)), 2)
-        measure = criterion.measure(stretch[:n], stress[:n])
+        log_stress = np.log(np.maximum(stress[:n], 1e-300))
+        even = np.linspace(log_stress[0], log_stress[-1], _POINTS)
+        elongation = np.interp(even, log_stress, log_elongation[:n])
+        stretch = 1.0 + np.exp(elongation)
+        measure, energy = criterion.measure(stretch, np.exp(even)), law.energy(stretch, theta)
         limit = np.inf if n == _POINTS else float(stress[n - 1])
-        energy = law.energy(stretch[:n], theta)
-        return cls(np.log(np.maximum(stress[:n], 1e-300)), np.log(measure), np.log(elongation[:n]), energy, limit)
+        return cls(float(even[0]), float(even[1] - even[0]), np.log(measure), elongation, energy, limit)
 
-    def measure_at(self, stress: Array) -> Array:
-        """log measure at each nominal stress; −inf where there is no tension, inf beyond the law's limit."""
-        return self._at(self.log_measure, stress)
+    @property
+    def end(self) -> float:
+        """Last log stress."""
+        return self.start + self.step * (_POINTS - 1)
 
-    def stretch_at(self, stress: Array) -> Array:
-        """Stretch at each nominal stress in tension, 1 elsewhere; the table's end beyond it."""
-        with np.errstate(divide="ignore", invalid="ignore"):
-            log = np.interp(np.log(np.maximum(stress, 1e-300)), self.log_stress, self.log_elongation)
-        return np.where(stress > 0.0, 1.0 + np.exp(log), 1.0)
+    def log_measure_at(self, log_stress: Array) -> Array:
+        """log measure at each log nominal stress; −inf where there is no tension, inf beyond the law's limit.
 
-    def energy_at(self, stress: Array) -> Array:
-        """Strain energy per unstretched volume at each nominal stress, MPa."""
-        with np.errstate(divide="ignore", invalid="ignore"):
-            found = np.interp(np.log(np.maximum(stress, 1e-300)), self.log_stress, self.energy)
-        return np.where(stress > np.exp(self.log_stress[0]), found, 0.0)
+        Below the table the measure is taken as proportional to the stress; beyond it, where the hazard is overwhelming
+        already, it goes on with the last slope.
+        """
+        x = (log_stress - self.start) / self.step
+        k = np.clip(x, 0.0, _POINTS - 2.0).astype(np.intp)
+        low = self.log_measure[k]
+        out = low + (x - k) * (self.log_measure[k + 1] - low)
+        below = x < 0.0
+        if np.any(below):
+            out = np.where(below, self.log_measure[0] + x * self.step, out)
+        if np.isfinite(self.limit):
+            out = np.where(x > _POINTS - 1.0, np.inf, out)
+        return out
 
-    def _at(self, column: Array, stress: Array) -> Array:
-        with np.errstate(divide="ignore", invalid="ignore"):
-            log = np.log(np.maximum(stress, 0.0))
-        # Below the first entry every measure here is proportional to the stress; above the last it is extrapolated
-        # with the last slope, the hazard there being overwhelming already.
-        out = np.interp(log, self.log_stress, column)
-        low = log < self.log_stress[0]
-        out = np.where(low, column[0] + (log - self.log_stress[0]), out)
-        end = (column[-1] - column[-2]) / (self.log_stress[-1] - self.log_stress[-2])
-        high = log > self.log_stress[-1]
-        beyond = np.inf if np.isfinite(self.limit) else column[-1] + end * (log - self.log_stress[-1])
-        return np.where(high, beyond, out)
+    def stretch_at(self, log_stress: Array) -> Array:
+        """Stretch at each log nominal stress; the table's ends beyond it."""
+        return 1.0 + np.exp(self._interp(self.log_elongation, log_stress))
+
+    def energy_at(self, log_stress: Array) -> Array:
+        """Strain energy per unstretched volume at each log nominal stress, MPa."""
+        return self._interp(self.energy, log_stress) * (log_stress > self.start)
+
+    def _interp(self, column: Array, log_stress: Array) -> Array:
+        return np.interp(log_stress, self.start + self.step * np.arange(_POINTS), column)

@@ -98,6 +98,11 @@ def test_outside_of_the_folder(small: SmallStudy, name: str) -> None:
     says(small.faults(), f'read "{name}"; expected the path of a file below the study\'s folder')
 
 
+def test_absolute_path_even_inside(small: SmallStudy) -> None:
+    small.change("study.toml", '"marks.csv"', f'"{small.folder / "marks.csv"}"')
+    says(small.faults(), "expected the path of a file below the study's folder")
+
+
 def test_link_to_outside(small: SmallStudy, tmp_path_factory: pytest.TempPathFactory) -> None:
     other = tmp_path_factory.mktemp("other") / "marks.csv"
     other.write_text(small.text("marks.csv"))

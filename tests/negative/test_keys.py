@@ -251,6 +251,11 @@ def test_faults_are_gathered_with_their_lines(small: SmallStudy) -> None:
     says(text, "line 1, study.seed", "line 3, study.sed", "line 9, part.length", "line 38, gauges.mass_reading")
 
 
+def test_line_of_the_second_of_several_entries(small: SmallStudy) -> None:
+    small.change("study.toml", "[statement]", '[[demand]]\nname = "pull-over"\nforce = "3 kg"\n[statement]')
+    says(small.faults(), 'study.toml, line 54, demand[2].force: read "3 kg"')
+
+
 def test_gauge_of_the_pull_is_checked_too(small: SmallStudy) -> None:
     small.change("study.toml", "temperature =", 'gauges = { mark_readin = "0.1 mm" }\ntemperature =')
     says(small.faults(), "line 29, pull[1].gauges.mark_readin", 'Did you mean "mark_reading"?')

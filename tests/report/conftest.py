@@ -6,8 +6,9 @@ from pathlib import Path
 from typing import Any
 
 import pytest
-from report_folder import build, results
+from report_folder import build
 from report_numbers import Numbers
+from report_results import results
 
 
 @pytest.fixture(scope="session")

@@ -1,4 +1,4 @@
-"""The report drawn from a synthetic results folder: everything is there, nothing hostile gets through, gaps are explained."""
+"""The report drawn from a synthetic results folder: complete, safe from hostile text, with its gaps explained."""
 
 from __future__ import annotations
 
@@ -11,7 +11,8 @@ from typing import Any
 
 import pandas as pd
 import pytest
-from report_folder import quick, withheld, write_results
+from report_folder import write_results
+from report_results import quick, withheld
 
 from pullback.studies.faults import BadInput
 from pullback.studies.report import draw
@@ -53,7 +54,14 @@ def test_every_figure_is_drawn_with_caption_and_words_for_the_blind(page: str, n
 
 
 def test_every_axis_names_its_unit(page: str) -> None:
-    for label in ("station X (mm)", "position x (mm)", "force (N)", "section A₀ (mm²)", "nominal stress P (MPa)", "stretch λ (1)"):
+    for label in (
+        "station X (mm)",
+        "position x (mm)",
+        "force (N)",
+        "section A₀ (mm²)",
+        "nominal stress P (MPa)",
+        "stretch λ (1)",
+    ):
         assert label in page
 
 
@@ -87,12 +95,18 @@ def test_no_number_comes_out_as_a_word(page: str) -> None:
 
 def test_missing_cells_and_numbers_are_explained(changed: tuple[Path, dict[str, Any]]) -> None:
     copied, results = changed
-    for name, column in (("readings", "force read [N]"), ("marks", "position read [mm]"), ("coupons", "nominal stress read [MPa]")):
+    for name, column in (
+        ("readings", "force read [N]"),
+        ("marks", "position read [mm]"),
+        ("coupons", "nominal stress read [MPa]"),
+    ):
         table = pd.read_csv(copied / "tables" / f"{name}.csv")
         table.loc[1, column] = float("nan")
         table.to_csv(copied / "tables" / f"{name}.csv", index=False)
     margin = results["margins"][0] | {"median": None, "interval": None, "reason": "fewer than 3 distinct failures"}
-    results["margins"] = [margin | {"shortfall_probability": {"median": None, "upper": None, "confidence": 0.95, "below": 0.0083}}]
+    results["margins"] = [
+        margin | {"shortfall_probability": {"median": None, "upper": None, "confidence": 0.95, "below": 0.0083}}
+    ]
     results["parameters"]["lot"] |= {"median": None, "sd": None, "interval": None, "reason": "held fixed"}
     write_results(copied, results)
     told = text_of(draw(copied).read_text(encoding="utf-8"))
@@ -107,13 +121,23 @@ def test_hostile_text_is_shown_not_run(changed: tuple[Path, dict[str, Any]]) -> 
     results["margins"][0]["demand"] = results["margins"][0]["demand"] + HOSTILE
     results["record"] = {HOSTILE: HOSTILE}
     results["warnings"] = [HOSTILE]
-    for name, column in (("marks", "step"), ("profile", "step"), ("capacity", "part"), ("marks", "piece"), ("profile", "piece")):
+    for name, column in (
+        ("marks", "step"),
+        ("profile", "step"),
+        ("capacity", "part"),
+        ("marks", "piece"),
+        ("profile", "piece"),
+    ):
         table = pd.read_csv(copied / "tables" / f"{name}.csv", dtype={column: str})
         table[column] = table[column] + HOSTILE
         table.to_csv(copied / "tables" / f"{name}.csv", index=False)
     write_results(copied, results)
     drawn = draw(copied).read_text(encoding="utf-8")
-    assert "<script" not in drawn and drawn.count("</style>") == 1 and drawn.count("</title>") == 1 + drawn.count("<title ")
+    assert (
+        "<script" not in drawn
+        and drawn.count("</style>") == 1
+        and drawn.count("</title>") == 1 + drawn.count("<title ")
+    )
     assert HOSTILE in html.unescape(drawn.partition("<h1>")[2].partition("</h1>")[0])
 
 
@@ -142,9 +166,14 @@ def test_the_quick_banner_stands_on_every_section_and_printed_page(changed: tupl
 
 @pytest.mark.parametrize(
     ("file", "name", "reason"),
-    [("tables/law.csv", "law", "no rows in tables/law.csv"), ("posterior.nc", "corner", "no draws of the law's parameters")],
+    [
+        ("tables/law.csv", "law", "no rows in tables/law.csv"),
+        ("posterior.nc", "corner", "no draws of the law's parameters"),
+    ],
 )
-def test_a_figure_without_data_says_why(changed: tuple[Path, dict[str, Any]], file: str, name: str, reason: str) -> None:
+def test_a_figure_without_data_says_why(
+    changed: tuple[Path, dict[str, Any]], file: str, name: str, reason: str
+) -> None:
     copied, _ = changed
     (copied / file).unlink()
     assert reason in text_of(figure(draw(copied).read_text(encoding="utf-8"), name))
@@ -154,7 +183,9 @@ def test_drawing_again_gives_the_same_page(folder: Path, page: str) -> None:
     assert draw(folder).read_text(encoding="utf-8") == page
 
 
-def test_a_failed_write_leaves_the_old_report_alone(changed: tuple[Path, dict[str, Any]], monkeypatch: pytest.MonkeyPatch) -> None:
+def test_a_failed_write_leaves_the_old_report_alone(
+    changed: tuple[Path, dict[str, Any]], monkeypatch: pytest.MonkeyPatch
+) -> None:
     copied, _ = changed
     (copied / "report.html").write_text("the old one", encoding="utf-8")
 
@@ -170,7 +201,12 @@ def test_a_failed_write_leaves_the_old_report_alone(changed: tuple[Path, dict[st
 
 @pytest.mark.parametrize(
     ("content", "message"),
-    [(None, "results.json: read nothing there"), (b"{", "expected JSON in UTF-8"), (b"\xff\xfe", "expected JSON"), (b"{}", "required property")],
+    [
+        (None, "results.json: read nothing there"),
+        (b"{", "expected JSON in UTF-8"),
+        (b"\xff\xfe", "expected JSON"),
+        (b"{}", "required property"),
+    ],
 )
 def test_a_folder_without_results_is_refused_by_name(tmp_path: Path, content: bytes | None, message: str) -> None:
     if content is not None:
@@ -182,8 +218,8 @@ def test_a_folder_without_results_is_refused_by_name(tmp_path: Path, content: by
 def test_a_table_or_posterior_that_cannot_be_read_is_refused_by_name(changed: tuple[Path, dict[str, Any]]) -> None:
     copied, _ = changed
     (copied / "posterior.nc").write_bytes(b"not netCDF")
-    with pytest.raises(BadInput, match="posterior.nc: .*expected draws in netCDF"):
+    with pytest.raises(BadInput, match=r"posterior\.nc: .*expected draws in netCDF"):
         draw(copied)
     (copied / "tables" / "law.csv").write_bytes(b"")
-    with pytest.raises(BadInput, match="law.csv: .*expected a comma-separated table"):
+    with pytest.raises(BadInput, match=r"law\.csv: .*expected a comma-separated table"):
         draw(copied)

@@ -7,9 +7,9 @@ from typing import Any
 
 import pytest
 from jsonschema import Draft202012Validator
-from report_folder import quick, withheld
+from report_results import quick, withheld
 
-from pullback.studies.results.schema import ResultsFault, schema, validate
+from pullback.studies.results.schema import ResultsError, schema, validate
 
 
 def test_schema_is_itself_valid() -> None:
@@ -28,7 +28,11 @@ BREAKS = [
     (("diagnostics", "rhat_max"), float("nan"), r"diagnostics\.rhat_max: nan is not a finite number"),
     (("parameters", "c10", "colour"), "red", r"parameters\.c10: Additional properties .*'colour'"),
     (("unknown",), 1, r"top level: Additional properties .*'unknown'"),
-    (("next_part", "capacity", 0, "quantiles", 0, "share"), 1.5, r"quantiles\[0\]\.share: 1\.5 is greater than the maximum"),
+    (
+        ("next_part", "capacity", 0, "quantiles", 0, "share"),
+        1.5,
+        r"quantiles\[0\]\.share: 1\.5 is greater than the maximum",
+    ),
 ]
 
 
@@ -39,10 +43,10 @@ def test_a_break_is_named_by_its_place(found: dict[str, Any], path: tuple[Any, .
     for step in path[:-1]:
         inner = inner[step]
     inner[path[-1]] = value
-    with pytest.raises(ResultsFault, match=message):
+    with pytest.raises(ResultsError, match=message):
         validate(broken)
 
 
 def test_a_missing_key_is_named(found: dict[str, Any]) -> None:
-    with pytest.raises(ResultsFault, match="'margins' is a required property"):
+    with pytest.raises(ResultsError, match="'margins' is a required property"):
         validate({key: value for key, value in found.items() if key != "margins"})

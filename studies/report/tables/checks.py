@@ -1,0 +1,52 @@
+"""Posterior predictive checks, and how far each prior carries the result."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from pullback.studies.report import words
+from pullback.studies.report.load import ResultsFolder
+from pullback.studies.report.tables.base import Table
+
+_CHECKS = (
+    "p: how often readings replicated from the calibrated model lie as far off as those read. Near 0 the model or "
+    "the gauge errors do not explain the readings; near 1 the errors are stated too large."
+)
+_SENSITIVITY = (
+    "Relative change of the guaranteed load when the scale of one prior is multiplied, ± its Monte Carlo standard "
+    "error. Small changes mean that the data, not the prior, carry the statement."
+)
+
+
+def checks(folder: ResultsFolder) -> Table:
+    """One row for each piece and kind of reading."""
+    rows = [_check(entry) for entry in folder.results["checks"]]
+    heads = ("Readings", "Piece", "Number", "χ² per reading", "p")
+    return Table("Posterior predictive checks", heads, rows, (0, 1), _CHECKS, "No check was made.")
+
+
+def _check(entry: dict[str, Any]) -> tuple[str, ...]:
+    p = words.number(entry["p"], 2) if words.is_number(entry["p"]) else words.withheld(entry.get("reason"))
+    chi2 = entry["chi2_per_reading"]
+    chi = words.fixed(chi2, 2) if words.is_number(chi2) else words.DASH
+    return entry["kind"], entry.get("piece") or words.DASH, words.number(entry["readings"]), chi, p
+
+
+def sensitivity(folder: ResultsFolder) -> Table:
+    """One row for each prior, factor and reliability."""
+    rows = [_change(entry) for entry in folder.results["prior_sensitivity"]]
+    heads = ("Prior", "Scale times", "Demand", "Share of parts", "Change of the guaranteed load")
+    return Table("Prior sensitivity", heads, rows, (0, 2), _SENSITIVITY, "No prior was varied.")
+
+
+def _change(entry: dict[str, Any]) -> tuple[str, ...]:
+    head = (
+        entry["prior"],
+        words.given(entry["factor"]),
+        entry.get("demand") or "all",
+        words.share(entry["reliability"]),
+    )
+    if not words.is_number(entry["change"]):
+        return (*head, words.withheld(entry.get("reason")))
+    change = words.percent(entry["change"], 1, signed=True)
+    return (*head, f"{change} ± {words.percent(entry['error'], 1)}" if words.is_number(entry["error"]) else change)

@@ -1,0 +1,115 @@
+"""The first page's two tables: what is guaranteed against what is required, and what is expected."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from pullback.studies.report import words
+from pullback.studies.report.load import ResultsFolder
+from pullback.studies.report.tables.base import Table
+
+_SHORTFALL_NOTE = (
+    "Median and interval are predictive for one part: differences between parts and what is not known, together. "
+    "Shortfall is the share of parts that carry less than required, with its upper bound."
+)
+
+
+def required(margin: dict[str, Any]) -> str:
+    """What is required, with the spread of an uncertain or varying demand."""
+    text = f"{words.given(margin['required'])} {words.unit(margin['unit'])}"
+    ends = margin.get("required_interval")
+    if ends and all(words.is_number(end) for end in ends):
+        kind = margin.get("required_kind", "")
+        _, _, span = words.estimate(margin["required"], None, ends)
+        text += f" ({span}{', ' + kind if kind in ('varies', 'not known') else ''})"
+    return text
+
+
+def named(margin: dict[str, Any]) -> str:
+    """The demand's name with its service case."""
+    return margin["demand"] + (f", {margin['service']}" if margin["service"] else "")
+
+
+def guaranteed(folder: ResultsFolder) -> Table:
+    """One row for each demand and stated reliability; where the statement is withheld nothing is called guaranteed."""
+    stated = folder.results["verdict"]["state"] == "stated"
+    rows = [
+        _guaranteed(margin, entry, stated) for margin in folder.results["margins"] for entry in margin["guaranteed"]
+    ]
+    heads = (
+        "Demand",
+        "Required",
+        "Parts / confidence",
+        "Guaranteed load" if stated else "Computed load",
+        "Margin",
+        "Result",
+    )
+    note = "The load that at least this share of parts carries, with this confidence. Rounded down."
+    if not stated:
+        note += " The statement is withheld: the computed loads and margins are not guaranteed."
+    return Table(
+        "Required and guaranteed" if stated else "Required and computed",
+        heads,
+        rows,
+        (0, 5),
+        note,
+        "The study states no demand.",
+    )
+
+
+def _guaranteed(margin: dict[str, Any], entry: dict[str, Any], stated: bool) -> tuple[str, ...]:
+    head = (
+        named(margin),
+        required(margin),
+        f"{words.share(entry['reliability'])} / {words.share(entry['confidence'])}",
+    )
+    met = entry.get("met", "not shown")
+    if not words.is_number(entry["value"]):
+        return (*head, words.DASH, words.DASH, f"{words.SIGN[met]} {met}: {words.withheld(entry.get('reason'))}")
+    load = f"{words.floor_load(entry['value'], margin['required'])} {words.unit(margin['unit'])}"
+    return (*head, load, words.floor_percent(entry.get("margin")), _result(met, stated))
+
+
+def _result(met: str, stated: bool) -> str:
+    if stated:
+        return f"{words.SIGN[met]} {met}"
+    return f"{words.SIGN['not shown']} not shown (as computed: {met})"
+
+
+def expected(folder: ResultsFolder) -> Table:
+    """One row a demand: median margin, its interval, and the shortfall."""
+    rows = [_expected(margin) for margin in folder.results["margins"]]
+    level = {words.share(margin["level"]) for margin in folder.results["margins"]} or {"95 %"}
+    heads = (
+        "Demand",
+        "Median margin",
+        f"{' / '.join(sorted(level))} interval",
+        "Shortfall, median",
+        "Shortfall, upper bound",
+    )
+    return Table("Expected", heads, rows, (0,), _SHORTFALL_NOTE, "The study states no demand.")
+
+
+def _expected(margin: dict[str, Any]) -> tuple[str, ...]:
+    median, span = words.margin_band(margin["median"], margin["interval"])
+    if median == words.DASH and margin.get("reason"):
+        median = words.withheld(margin["reason"])
+    return (named(margin), median, span, *shortfall(margin["shortfall_probability"]))
+
+
+def shortfall(found: dict[str, Any] | None) -> tuple[str, str]:
+    """Median and upper bound of the share that falls short, or what may be said instead."""
+    if found is None:
+        return words.DASH, words.withheld(None)
+    least = found.get("below")
+    said = [_share_or_below(found[key], least) for key in ("median", "upper")]
+    if words.DASH in said and found.get("reason"):
+        said = [text if text != words.DASH else words.withheld(found["reason"]) for text in said]
+    upper = f"{said[1]} ({words.share(found['confidence'])} confidence)" if words.is_number(found["upper"]) else said[1]
+    return said[0], upper
+
+
+def _share_or_below(value: Any, least: Any) -> str:
+    if words.is_number(value):
+        return f"{words.number(100.0 * value, 2)}{words.NO_BREAK}%"
+    return f"below {words.number(100.0 * least, 2)}{words.NO_BREAK}%" if words.is_number(least) else words.DASH
