@@ -186,13 +186,12 @@ def _margin(study: Study, demand: Demand, of: Capacity, index: int) -> Margin:
         required = rng.choice(nodes, draws)
         short = np.mean([_at_load(of, np.full(draws, r)) for r in nodes], axis=0)
         ratio = _ratio_quantiles(of, nodes, 1.0 - np.array(reliability))
-        found = margin(demand.name, required, of.load, ratio, short, reliability, confidence, failures, of.quantiles[:, 1:])
-        return found
-    value = demand.force
-    exact = isinstance(value, float | int)
-    required = demand.factor * (np.full(draws, float(value)) if exact else value.value(rng.standard_normal(draws)))
-    ratio = of.quantiles[:, 1:] / required[:, None]
-    short = _at_load(of, required)
+    else:
+        value = demand.force
+        exact = isinstance(value, float | int)
+        required = demand.factor * (np.full(draws, float(value)) if exact else value.value(rng.standard_normal(draws)))
+        ratio = of.quantiles[:, 1:] / required[:, None]
+        short = _at_load(of, required)
     return margin(demand.name, required, of.load, ratio, short, reliability, confidence, failures, of.quantiles[:, 1:])
 
 
@@ -256,7 +255,7 @@ def largest_stretch_informed(calibration: Calibration, bands: Bands) -> float:
 
 
 def _discretisation(calibration: Calibration, bands: Bands) -> float:
-    """Largest change of a predicted position (over the marks' error) or force (over the cell's) on a mesh twice as fine."""
+    """Largest change of a predicted position or force, over its gauge's error, on a mesh twice as fine."""
     study, posterior = calibration.model.study, calibration.model.posterior
     fine = assemble(study, 2 * ELEMENTS).posterior
     q = bands.q[:1]
