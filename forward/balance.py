@@ -32,7 +32,7 @@ class Bar:
     """The bars of all lanes: one geometry of nodes, each lane its own sections, law parameters and stiffness.
 
     `nodes` (n+1,) mm; `area` (n, 1, lanes) mm²; `theta` (k, 1, lanes); `stiffness` (1, lanes), a factor on the
-    stress; `density` (lanes,) g/mm³.
+    stress; `density` (lanes,) g/mm³. In a solved state the middle axis has as many entries as there are steps.
     """
 
     nodes: Array
@@ -57,8 +57,14 @@ class Bar:
         """Sum of all loads (n+1, 1, lanes), N."""
         total = np.zeros((self.nodes.size, 1, self.lanes))
         for load in self.loads:
-            total += load.nodal(self.h, self.area, self.density)
+            total += load.nodal(self.h, self.area[:, :1], self.density)
         return total
+
+    def spread(self, steps: int) -> Bar:
+        """The same with every array laid out over the steps, so that steps and lanes run as one fast axis."""
+        area, theta = (np.repeat(x[:, :1], steps, axis=1) for x in (self.area, self.theta))
+        stiffness = np.repeat(self.stiffness[:1], steps, axis=0)
+        return Bar(self.nodes, area, self.law, theta, stiffness, self.density, self.loads)
 
     def take(self, lane: NDArray[np.intp]) -> Bar:
         """The bars of some lanes only."""

@@ -100,7 +100,7 @@ def tangent_linear(state: Equilibrium, along: Directions) -> Change:
     force, steps, p = _explicit(state, along), state.end_force.shape[0], along.theta.shape[1]
     load = np.zeros((bar.nodes.size, 1, p))
     for one in bar.loads:
-        scaled = bar.area * (along.log_area[:, None, :] + along.log_density)
+        scaled = bar.area[:, :1] * (along.log_area[:, None, :] + along.log_density)
         load += one.nodal_change(bar.h, scaled, np.broadcast_to(bar.density, (p,)))
     change = force[:-1] - force[1:] - load[1:-1]
     if not state.by_travel:

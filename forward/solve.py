@@ -57,7 +57,7 @@ def equilibrium(
 
     `guess` (n+1, steps, lanes) are starting positions; without it the linear-elastic shape is taken.
     """
-    nodal = bar.nodal_load()
+    bar, nodal = bar.spread(drive.shape[0]), bar.nodal_load()
     start = _linear_shape(bar, drive, by_travel) if guess is None else guess
     position, element, iterations = _newton(bar, nodal, drive, by_travel, start, tolerance)
     code = _codes(bar, nodal, drive, by_travel, position, element, tolerance)
@@ -79,7 +79,7 @@ def free_nodes(bar: Bar, by_travel: bool) -> slice:
 
 def _linear_shape(bar: Bar, drive: Array, by_travel: bool) -> Array:
     """Positions with elongation as 1/A, scaled to the travel, or to the force at the modulus of rest."""
-    ones = np.ones((1, 1, bar.lanes))
+    ones = np.ones((1, *drive.shape))
     e = bar.law.stress_and_slope(ones, bar.theta)[1] * bar.stiffness
     unit = bar.h / (e * bar.area)
     most = 2.0 * e[0] * bar.area.min(axis=0)

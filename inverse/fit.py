@@ -19,7 +19,7 @@ from scipy import linalg
 from scipy.optimize import least_squares
 
 from pullback.inverse.evidence import Surface
-from pullback.inverse.layout import Field, Layout, Modulus, Scalar
+from pullback.inverse.layout import Layout, Modulus, Scalar
 from pullback.inverse.posterior import Posterior
 
 Array = NDArray[np.float64]
@@ -138,7 +138,7 @@ def _at(q: Array, hyper: NDArray[np.intp], z: Array) -> Array:
 def _best_start(posterior: Posterior, origin: Array, free: NDArray[np.intp], seed: int) -> tuple[Array, Array]:
     """Least squares from the prior's middle and from draws of the law's parameters; the lowest cost wins."""
     layout, rng = posterior.layout, np.random.Generator(np.random.Philox(key=[seed, 1]))
-    law = [layout.slices[p.name].start for p in posterior.law.parameters]
+    law = [layout.slices[p.name].start for p in posterior.law.parameters if p.name in layout.slices]
     starts = [origin]
     for _ in range(_STARTS - 1):
         other = origin.copy()
@@ -157,6 +157,8 @@ def _least_squares(posterior: Posterior, q: Array, free: NDArray[np.intp]) -> tu
     layout = posterior.layout
     proper = np.array([i for i in free if _is_proper(posterior, i)], int)
     seen = np.array([i for i in free if i in set(proper) or not _strength_only(posterior, i)], int)
+    if seen.size == 0:
+        return q, 0.0
     unit = np.eye(layout.dim)[proper][:, seen]
 
     def whole(part: Array) -> Array:
@@ -166,12 +168,10 @@ def _least_squares(posterior: Posterior, q: Array, free: NDArray[np.intp]) -> tu
 
     def residuals(part: Array) -> Array:
         at = whole(part)
-        return np.concatenate((posterior.residuals(at), _prior_scale(posterior, at, proper) * at[proper]))
+        return np.concatenate((posterior.residuals(at), at[proper]))
 
     def jacobian(part: Array) -> Array:
-        at = whole(part)
-        scale = _prior_scale(posterior, at, proper)
-        return np.concatenate((posterior.jacobian(at)[:, seen], scale[:, None] * unit))
+        return np.concatenate((posterior.jacobian(whole(part))[:, seen], unit))
 
     best = least_squares(residuals, q[seen], jacobian, method="trf", ftol=1e-8, xtol=1e-8, gtol=1e-6, max_nfev=60)
     return whole(best.x), float(best.cost)
@@ -192,18 +192,6 @@ def _strength_only(posterior: Posterior, index: int) -> bool:
         if cut.start <= index < cut.stop:
             return isinstance(b, Scalar) and b.name not in {p.name for p in posterior.law.parameters}
     raise IndexError(index)
-
-
-def _prior_scale(posterior: Posterior, q: Array, proper: NDArray[np.intp]) -> Array:
-    """1 / prior standard deviation of each coordinate: one, but for field coefficients that are centred."""
-    layout = posterior.layout
-    scale = np.ones(layout.dim)
-    values = None
-    for b in layout.blocks:
-        if isinstance(b, Field) and np.any(b.share_spread):
-            values = values or layout.unpack(q[None])
-            scale[layout.slices[b.name]] = np.exp(-b.log_scale(values)[1][:, 0])
-    return scale[proper]
 
 
 def _node(posterior: Posterior, q: Array, hyper: NDArray[np.intp], free: NDArray[np.intp]) -> Node:

@@ -14,6 +14,8 @@ from pullback.inverse.posterior import Guess, Posterior
 
 Array = NDArray[np.float64]
 
+_MOST_INFORMATION = 1e12
+
 
 @dataclass(frozen=True)
 class Laplace:
@@ -26,15 +28,16 @@ class Laplace:
 
 
 def recentred(fit: Fit) -> Layout:
-    """The layout with each field coefficient centred by what the data say of it at the best node."""
+    """The layout with field coefficients that expect what the data say of each at the best node."""
     posterior, layout, q = fit.posterior, fit.posterior.layout, fit.best.q
     information = np.sum(posterior.jacobian(q) ** 2, axis=0)
     values = layout.unpack(q[None])
-    spread, ell = (float(values[k][0]) if k in values else 0.0 for k in ("spread", "correlation_length"))
-    blocks = [
-        b.recentred(spread, ell, information[layout.slices[b.name]]) if isinstance(b, Field) else b
-        for b in layout.blocks
-    ]
+    blocks = list(layout.blocks)
+    for k, b in enumerate(blocks):
+        if isinstance(b, Field):
+            # The Jacobian counts in the fit's coordinates, which are beta over their own scale.
+            by_beta = information[layout.slices[b.name]] / b.scale(values)[1][:, 0] ** 2
+            blocks[k] = b.informed_by(np.minimum(by_beta, _MOST_INFORMATION), values[b.name][:, 0])
     return Layout(blocks, layout.constants)
 
 
@@ -77,8 +80,9 @@ def _in_coordinates(node: Node, old: Layout, new: Layout) -> tuple[Array, Array]
         if isinstance(b, Field):
             cut, was = new.slices[b.name], old.block(b.name)
             assert isinstance(was, Field)
-            factor = np.exp((b.log_scale(values)[1] - was.log_scale(values)[1])[:, 0])
-            q[cut] *= factor
+            (mean, sd), (was_mean, was_sd) = b.scale(values), was.scale(values)
+            factor = (was_sd / sd)[:, 0]
+            q[cut] = q[cut] * factor + ((was_mean - mean) / sd)[:, 0]
             scale[cut] = factor
     return q, scale
 

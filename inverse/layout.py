@@ -139,77 +139,84 @@ class Drive:
 class Field:
     """Coefficients of one part's section field; value beta (m, lanes).
 
-    Coefficient k is beta_k = w_k(spread, ell) z_k with z_k standard normal. Its coordinate is z_k itself (not centred),
-    z_k spread/spread_ref (centred in the spread) or beta_k/w_k(spread_ref, ell_ref) (centred in both): `share_spread`
-    and `share_ell` are 0 or 1 per coefficient. What the data determine well is best sampled centred.
+    beta_k has the prior standard deviation w_k(spread, ell). Its coordinate q_k is beta_k less its expected value, over
+    its expected standard deviation, given the hyper-parameters and what the data say of it:
+
+        a = information w²,   beta = centre a/(1+a) + q w/sqrt(1+a).
+
+    Where the data say nothing this is the non-centred form, q = beta/w; where they say all, the centred one; in between
+    the one that leaves q nearest to a standard normal whatever spread and ell are. `information` (m,): diagonal of JᵀJ
+    by beta at the fit; `centre` (m,): beta at the fit. (Between Papaspiliopoulos, Roberts & Sköld, Stat. Sci. 22 (2007)
+    59, sec. 3, and the conditional mean of a normal.)
     """
 
     name: str
     unit: str
     basis: Basis
-    spread_ref: float
-    ell_ref: float
-    share_spread: Array
-    share_ell: Array
+    information: Array
+    centre: Array
 
     @property
     def size(self) -> int:
         """Number of coefficients."""
         return self.basis.omega.size
 
-    def log_scale(self, values: Values) -> tuple[Array, Array]:
-        """log w_k, and log of the coordinate's prior standard deviation, (m, lanes)."""
-        spread, ell = values["spread"], values["correlation_length"]
-        log_w = self.basis.log_weight(spread, ell)
-        ref = self.basis.log_weight(np.array([self.spread_ref]), np.array([self.ell_ref]))
-        by_spread = np.log(spread / self.spread_ref)
-        sd = self.share_spread[:, None] * by_spread + self.share_ell[:, None] * (log_w - by_spread - ref)
-        return log_w, sd
+    def _terms(self, values: Values) -> tuple[Array, Array, Array, Array]:
+        """w, 1/(1+a), mean and standard deviation of beta, each (m, lanes)."""
+        log_w = self.basis.log_weight(values["spread"], values["correlation_length"])
+        # Weights of fast waves fall below the smallest numbers; their coefficients are then nil all the same.
+        w = np.exp(np.maximum(log_w, _LEAST_LOG_WEIGHT))
+        a = self.information[:, None] * w * w
+        rest = 1.0 / (1.0 + a)
+        return w, rest, self.centre[:, None] * a * rest, w * np.sqrt(rest)
 
     def unpack(self, q: Array, values: Values) -> Array:
         """beta_k."""
-        log_w, log_sd = self.log_scale(values)
-        return np.exp(log_w - log_sd) * q
+        _, _, mean, sd = self._terms(values)
+        return mean + sd * q
 
     def log_prior(self, q: Array, values: Values) -> Array:
-        """Normal with the coordinate's own standard deviation."""
-        log_sd = self.log_scale(values)[1]
-        z = q * np.exp(-log_sd)
-        return np.sum(-0.5 * z * z - log_sd, axis=0)
+        """Normal density of beta times dbeta/dq."""
+        w, _, mean, sd = self._terms(values)
+        z = (mean + sd * q) / w
+        return np.sum(np.log(sd / w) - 0.5 * z * z, axis=0)
 
     def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
-        """Chain to the coordinates, and to spread and correlation length."""
+        """Chain to the coordinates, and through w to spread and correlation length."""
+        w, rest, mean, sd = self._terms(values)
+        z = (mean + sd * q) / w
+        g_beta = grads[self.name] - z / w
+        by_log_w = g_beta * self._by_log_w(q, rest, mean, sd) + z * z - 1.0 + rest
         spread, ell = values["spread"], values["correlation_length"]
-        log_w, log_sd = self.log_scale(values)
-        scale, inverse = np.exp(log_w - log_sd), np.exp(-log_sd)
-        g_beta, z = grads[self.name], q * inverse
-        g_q = g_beta * scale - z * inverse
-        along = g_beta * scale * q
-        normal = z * z - 1.0
-        by_spread = along * (1.0 - self.share_spread[:, None]) + normal * self.share_spread[:, None]
         dw = self.basis.log_weight_by_log_ell(ell)
-        by_ell = dw * (along * (1.0 - self.share_ell[:, None]) + normal * self.share_ell[:, None])
-        grads["spread"] = grads["spread"] + by_spread.sum(axis=0) / spread
-        grads["correlation_length"] = grads["correlation_length"] + by_ell.sum(axis=0) / ell
-        return g_q
+        grads["spread"] = grads["spread"] + by_log_w.sum(axis=0) / spread
+        grads["correlation_length"] = grads["correlation_length"] + (by_log_w * dw).sum(axis=0) / ell
+        return g_beta * sd
 
-    def coordinate(self, beta: Array, values: Values) -> Array:
-        """q for given beta (m, lanes)."""
-        log_w, log_sd = self.log_scale(values)
-        return beta * np.exp(log_sd - log_w)
+    def push(self, q: Array, values: Values, cut: slice, pushed: Values) -> Array:
+        """d beta / d q (m, dim), the hyper-parameters pushed already."""
+        _, rest, mean, sd = self._terms(values)
+        by_log_w = self._by_log_w(q, rest, mean, sd)
+        dw = self.basis.log_weight_by_log_ell(values["correlation_length"])
+        jac = by_log_w * pushed["spread"] / values["spread"]
+        jac = jac + by_log_w * dw * pushed["correlation_length"] / values["correlation_length"]
+        jac[:, cut] += np.diag(sd[:, 0])
+        return np.asarray(jac)
 
-    def recentred(self, spread: float, ell: float, strength: Array) -> Field:
-        """The same field with coefficients centred by `strength`, the diagonal of JᵀJ at the fit (see thresholds)."""
-        return Field(
-            self.name, self.unit, self.basis, spread, ell,
-            (strength > CENTRED_IN_SPREAD).astype(float), (strength > CENTRED_IN_ELL).astype(float),
-        )  # fmt: skip
+    def _by_log_w(self, q: Array, rest: Array, mean: Array, sd: Array) -> Array:
+        """d beta / d log w at fixed q: 2 mean/(1+a) + sd q/(1+a)."""
+        return rest * (2.0 * mean + sd * q)
+
+    def scale(self, values: Values) -> tuple[Array, Array]:
+        """Mean and standard deviation of beta that the coordinates count from, (m, lanes)."""
+        return self._terms(values)[2:]
+
+    def informed_by(self, information: Array, centre: Array) -> Field:
+        """The same field with coordinates that expect this of the data."""
+        return replace(self, information=information, centre=centre)
 
 
-CENTRED_IN_SPREAD = 3.0
-"""Information (prior variances) above which a coefficient is sampled centred in the spread."""
-CENTRED_IN_ELL = 10.0
-"""Information above which it is sampled centred in the correlation length too."""
+_LEAST_LOG_WEIGHT = -80.0
 
 
 @dataclass(frozen=True)
@@ -282,19 +289,8 @@ class Layout:
                 out[b.name] = np.zeros((b.size, self.dim))
                 out[b.name][:, cut] = np.diag(b.scale)
             elif isinstance(b, Field):
-                out[b.name] = self._push_field(b, part, cut, values, out)
+                out[b.name] = b.push(part, values, cut, out)
         return out
-
-    def _push_field(self, b: Field, q: Array, cut: slice, values: Values, out: Values) -> Array:
-        log_w, log_sd = b.log_scale(values)
-        scale = np.exp(log_w - log_sd)
-        jac = np.zeros((b.size, self.dim))
-        jac[:, cut] = np.diag(scale[:, 0])
-        beta = scale * q
-        jac += beta * (1.0 - b.share_spread[:, None]) * out["spread"] / values["spread"]
-        dw = b.basis.log_weight_by_log_ell(values["correlation_length"])
-        jac += beta * dw * (1.0 - b.share_ell[:, None]) * out["correlation_length"] / values["correlation_length"]
-        return jac
 
     def _parts(self, q: Array) -> list[tuple[Block, Array]]:
         cuts = self.slices

@@ -91,7 +91,7 @@ class Posterior:
         with np.errstate(over="ignore", invalid="ignore", divide="ignore"):
             values, predictions = self.predict(q[None])
             parts = [t.whitened(values, _of(predictions, t)) for t in self.gaussian]
-        r = np.concatenate(parts)
+        r = np.concatenate((np.zeros(0), *parts))
         # Least squares needs a number everywhere; a point that cannot be solved is far from any optimum.
         return np.nan_to_num(r, nan=1e6, posinf=1e6, neginf=-1e6)
 
@@ -105,7 +105,7 @@ class Posterior:
                 t.whitened_jacobian(values, _of(predictions, t), tangents[t.piece] if t.piece else pushed)
                 for t in self.gaussian
             ]
-        return np.nan_to_num(np.concatenate(rows))
+        return np.nan_to_num(np.concatenate((np.zeros((0, self.layout.dim)), *rows)))
 
     @property
     def gaussian(self) -> list[GaussianTerm | Marks]:

@@ -31,7 +31,7 @@ from pullback.studies.study import Gauge, Pull, Study
 
 Array = NDArray[np.float64]
 
-ELEMENTS = 120
+ELEMENTS = 80
 """Elements of a part: the positions' error is then far below any gauge's, which `discretisation` measures."""
 
 _STABLE_BEYOND = 1.2
@@ -184,7 +184,7 @@ def _unknowns(
         add("spread", "", variation.spread)
         add("correlation_length", "mm", variation.correlation_length)
         zero = np.zeros(piece.basis.omega.size)
-        blocks.append(Field(names.field, "", piece.basis, 0.04, study.part.length / 8.0, zero, zero))
+        blocks.append(Field(names.field, "", piece.basis, zero, zero))
     blocks.append(_drive(pull, piece, study))
     return blocks, constants
 

@@ -71,6 +71,11 @@ class Curve(_OfLaw):
         cot.values[self.noise] = cot.values[self.noise] + (chi - self.count) / s
         return -0.5 * chi - self.count * (np.log(s) + 0.5 * np.log(2.0 * np.pi))
 
+    def whitened_jacobian(self, values: Values, prediction: Prediction | None, tangent: Tangent | Values) -> Array:
+        """See `GaussianTerm`; an unknown noise level is held."""
+        sigma = self.sigma[:, None] if self.noise is None else values[self.noise]
+        return -self.push(values, prediction, tangent) / sigma
+
     def _residual(self, values: Values, prediction: Prediction | None) -> Array:
         sigma = self.sigma[:, None] if self.noise is None else values[self.noise]
         return (self.readings[:, None] - self.stress(values)) / sigma

@@ -73,7 +73,7 @@ def first_page(folder: ResultsFolder) -> FirstPage:
         result=result,
         sign=words.SIGN[result],
         reasons=[_reason(found) for found in verdict["reasons"]],
-        tables=[demands.guaranteed(folder), demands.expected(folder)],
+        tables=[demands.guaranteed(folder)],
         blocks=_blocks(results),
     )
 
@@ -83,7 +83,11 @@ def _reason(found: dict[str, Any]) -> Reason:
     if words.is_number(found.get("number")):
         measured = f"found {words.found(found['number'])}"
         measured += f", limit {limit(found['limit'])}" if found.get("limit") is not None else ""
-    return Reason(found["rule"], found["text"], measured, found.get("remedy") or "")
+    return Reason(found["rule"], _sentence(words.plain(found["text"])), measured, _sentence(found.get("remedy") or ""))
+
+
+def _sentence(text: str) -> str:
+    return text[:1].upper() + text[1:]
 
 
 def _blocks(results: dict[str, Any]) -> list[Block]:

@@ -12,6 +12,7 @@ import pandas as pd
 from numpy.typing import NDArray
 
 from pullback.studies.faults import BadInput, Fault
+from pullback.studies.results.cells import original
 from pullback.studies.results.schema import ResultsError, validate
 
 Array = NDArray[np.float64]
@@ -36,6 +37,7 @@ class ResultsFolder:
     posterior: dict[str, Drawn] = field(default_factory=dict)
     prior: dict[str, Drawn] = field(default_factory=dict)
     sample_stats: dict[str, Drawn] = field(default_factory=dict)
+    predictions: dict[str, Drawn] = field(default_factory=dict)
 
     @property
     def quick(self) -> bool:
@@ -57,6 +59,9 @@ class ResultsFolder:
         return [] if found is None or column not in found.columns else list(dict.fromkeys(found[column]))
 
 
+_GROUPS = ("posterior", "prior", "sample_stats", "predictions")
+
+
 def load(folder: Path) -> ResultsFolder:
     """Read `folder`.
 
@@ -65,7 +70,7 @@ def load(folder: Path) -> ResultsFolder:
     """
     results = _read_results(folder / "results.json")
     tables = {path.stem: _read_table(path) for path in sorted((folder / "tables").glob("*.csv"))}
-    groups = [_read_group(folder / "posterior.nc", name) for name in ("posterior", "prior", "sample_stats")]
+    groups = [_read_group(folder / "posterior.nc", name) for name in _GROUPS]
     return ResultsFolder(folder, results, tables, *groups)
 
 
@@ -100,6 +105,8 @@ _TEXT = (
     "informed",
     "met",
     "reason",
+    "meaning",
+    "unit",
 )
 
 
@@ -109,9 +116,10 @@ def _read_table(path: Path) -> pd.DataFrame:
         header = pd.read_csv(path, encoding="utf-8", nrows=0).columns
         gaps = {column: ["", "nan"] for column in header if column not in _TEXT}
         text = {column: str for column in header if column in _TEXT}
-        return pd.read_csv(path, encoding="utf-8", dtype=text, keep_default_na=False, na_values=gaps)
+        found = pd.read_csv(path, encoding="utf-8", dtype=text, keep_default_na=False, na_values=gaps)
     except (UnicodeDecodeError, ValueError) as fault:
         raise _bad(path, f"'{fault}'", "a comma-separated table in UTF-8") from fault
+    return found.assign(**{column: found[column].map(original) for column in text})
 
 
 def _read_group(path: Path, group: str) -> dict[str, Drawn]:

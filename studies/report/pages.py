@@ -21,6 +21,7 @@ from pullback.studies.report.figures import (
 from pullback.studies.report.figures.base import Figure, not_drawn
 from pullback.studies.report.figures.columns import NotDrawn
 from pullback.studies.report.load import ResultsFolder
+from pullback.studies.report.tables import demands
 from pullback.studies.report.tables.base import Table
 from pullback.studies.report.tables.capacities import capacities
 from pullback.studies.report.tables.checks import checks, sensitivity
@@ -45,11 +46,11 @@ PAGES = (
     Page("marks", "Marks", (marks,)),
     Page("section", "Section", (section,)),
     Page("force", "Force and travel", (force_travel,)),
-    Page("margin", "Margin", (margin,)),
+    Page("margin", "Margin", (margin,), (demands.expected,)),
     Page("capacity", "Capacity", (capacity,), (capacities,)),
     Page("where", "Where it fails", (where,), (energy,)),
-    Page("parameters", "Parameters", (corner,), (parameters,)),
     Page("law", "The compound's law", (law,)),
+    Page("parameters", "Parameters", (corner,), (parameters,)),
     Page("stress", "Stress along the part", (stress,)),
     Page("sampling", "Sampling", (trace,), (diagnostics,)),
     Page("rules", "Rules and checks", (), (rules, checks, sensitivity)),

@@ -7,6 +7,7 @@ down, never up; an absent number is written as its reason.
 from __future__ import annotations
 
 import math
+import re
 from collections.abc import Sequence
 from typing import Any, TypeGuard
 
@@ -162,6 +163,19 @@ def given(value: float) -> str:
 def found(value: Any) -> str:
     """A number that a rule looked at, to at most four significant digits and no closing zeros."""
     return given(float(f"{value:.4g}")) if is_number(value) else DASH
+
+
+def plain(text: str) -> str:
+    """A rule's text with the unknowns' names as words: `P1 field[12]` is a coefficient, `force_scale` two words."""
+    text = re.sub(r"(\S+) field\[(\d+)\]", r"coefficient \2 of the section of \1", text)
+    return re.sub(r"(?<=[a-z])_(?=[a-z])", " ", re.sub(r"(?<=\s)-(?=[\d.])", MINUS, text))
+
+
+def ceil_percent(value: float) -> str:
+    """An upper bound in percent, rounded up to two digits."""
+    places = max(1 - _exponent(100.0 * value, 2), 0) if value > 0 else 0
+    up = math.ceil(round(100.0 * value * 10.0**places, 6)) / 10.0**places
+    return fixed(up, places) + NO_BREAK + "%"
 
 
 def law(name: str) -> str:

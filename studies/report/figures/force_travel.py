@@ -2,18 +2,22 @@
 
 from __future__ import annotations
 
+import numpy as np
 import pandas as pd
 
 from pullback.studies.report.figures import style
 from pullback.studies.report.figures.base import Figure, PanelDrawn, figure
-from pullback.studies.report.figures.columns import column, need, triple
+from pullback.studies.report.figures.columns import Array, column, need, triple
 from pullback.studies.report.load import ResultsFolder
 
 TITLE = "Force and travel"
 _CAPTION = (
     "Force at the pulled end against travel, with the 95 % band of the calibrated part and the readings (points); on "
-    "the right each reading minus the fitted force of its step, with the 95 % interval of that force around zero. "
-    "Readings that all lie on one side, growing with the force, point to the load cell's scale."
+    "the right each reading minus the fitted force of its step, with ±2 standard errors of the reading, and the 95 % "
+    "band of the fitted force around zero. Readings whose bars miss the band are suspect; readings that all lie on one "
+    "side, growing with the force, point to the load cell's scale. "
+    "The band on the left is of the force at the pulled end; cell errors, and the weight between the pulled end and "
+    "the cell, are in the band on the right."
 )
 
 
@@ -44,12 +48,22 @@ def _curve(curve: pd.DataFrame, readings: pd.DataFrame) -> PanelDrawn:
 def _left_over(readings: pd.DataFrame) -> PanelDrawn:
     canvas, axes = style.panel("travel (mm)", "force read − fitted (N)")
     travel, fitted = column(readings, "travel median [mm]"), triple(readings, "force", "N")
-    reach = (fitted.median - fitted.lower, fitted.upper - fitted.median)
-    axes.errorbar(travel, 0 * travel, reach, fmt="_", color=style.BLUE, capsize=3, linewidth=1.0, label="fitted, 95 %")
+    order = np.argsort(travel, kind="stable")
+    below, above = (fitted.lower - fitted.median)[order], (fitted.upper - fitted.median)[order]
+    style.band(axes, travel[order], below, above, label="fitted, 95 %")
     left = column(readings, "force read [N]") - fitted.median
-    axes.plot(travel, left, "o", color=style.VERMILION, mfc="white", mew=1.0, label="read − fitted")
+    error, name = _error(readings)
+    look = {"color": style.VERMILION, "mfc": "white", "mew": 1.0, "capsize": 2.5, "linewidth": 0.9}
+    axes.errorbar(travel, left, error, fmt="o", label=name, **look)
     axes.axhline(0.0, color=style.GREY, linewidth=0.6)
     style.legend(axes)
     return PanelDrawn(
-        canvas, "Force left over", "Readings minus fitted force against travel, with 95 % intervals about zero."
+        canvas, "Force left over", "Readings minus fitted force against travel, with the fit's 95 % band about zero."
     )
+
+
+def _error(readings: pd.DataFrame) -> tuple[Array | None, str]:
+    """Two standard errors of each force reading, where the results give them, and the points' name."""
+    if "force standard error [N]" not in readings.columns:
+        return None, "read − fitted"
+    return 2.0 * column(readings, "force standard error [N]"), "read − fitted, ±2 se"

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import Any
 
+import numpy as np
 import pandas as pd
 
 from pullback.studies.report import words
@@ -15,7 +16,8 @@ from pullback.studies.report.load import ResultsFolder
 TITLE = "The compound's law"
 _CAPTION = (
     "Nominal stress against stretch with its 95 % band. Points: the coupons' pairs of stretch and stress at break; "
-    "triangles: coupons that did not break. Hatched: stretches at which no force or stress was read; there only the "
+    "triangles: coupons that did not break; they scatter by their own reading errors, which the band does not hold. "
+    "Hatched: stretches at which no force or stress was read; there only the "
     "law's form speaks, and the band does not hold what another form would say. The upright line is the median "
     "stretch at which a part fails."
 )
@@ -64,6 +66,7 @@ def _coupons(axes: Any, folder: ResultsFolder) -> None:
         return
     broke = (table["broke"] == "yes").to_numpy()
     for which, marker, label in ((broke, "o", "coupons, broken"), (~broke, "^", "coupons, not broken")):
+        which = which & np.isfinite(stress) & np.isfinite(elongation)
         if which.any():
             axes.plot(
                 1 + elongation[which], stress[which], marker, color=style.VERMILION, mfc="white", mew=0.9, label=label

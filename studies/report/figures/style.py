@@ -125,16 +125,31 @@ def short(text: str, most: int = 16) -> str:
     return flat if len(flat) <= most else flat[: most - 1] + "…"
 
 
+_LETTER, _HANDLE, _ROW = 0.056, 0.44, 0.14  # inches at the legend's size: a letter, a handle with its gaps, a line
+
+
 def legend(axes: Axes) -> None:
-    """A legend in one line above the axes, so that it hides nothing."""
-    entries = len(axes.get_legend_handles_labels()[1])
-    place: dict[str, Any] = {
-        "loc": "lower left",
-        "bbox_to_anchor": (-0.02, 1.02),
-        "columnspacing": 1.0,
-        "borderaxespad": 0.0,
-    }
-    axes.legend(ncols=max(entries, 1), **place)
+    """A legend above the axes, in as many lines as its entries need, so that it hides nothing and nothing of it."""
+    handles, labels = axes.get_legend_handles_labels()
+    if not labels:
+        return
+    box, size = axes.get_position(), axes.get_figure().get_size_inches()  # type: ignore[union-attr]
+    room = size[0] * (1.0 - box.x0)
+    columns = len(labels)
+    while columns > 1 and _legend_width(labels, columns) > room:
+        columns -= 1
+    rows = -(-len(labels) // columns)
+    axes.set_position((box.x0, box.y0, box.width, box.height - (rows - 1) * _ROW / size[1]))
+    order = [k for c in range(columns) for k in range(c, len(labels), columns)]  # read along lines, not down columns
+    axes.legend(
+        [handles[k] for k in order], [labels[k] for k in order], ncols=columns, loc="lower left",
+        bbox_to_anchor=(-0.02, 1.02), columnspacing=1.0, borderaxespad=0.0, labelspacing=0.25,
+    )  # fmt: skip
+
+
+def _legend_width(labels: Sequence[str], columns: int) -> float:
+    """Width in inches of a legend filled line by line."""
+    return sum(_HANDLE + _LETTER * max(len(label) for label in labels[c::columns]) for c in range(columns))
 
 
 def power_of_ten(values: Array) -> tuple[float, str]:

@@ -16,6 +16,11 @@ _SENSITIVITY = (
     "Relative change of the guaranteed load when the scale of one prior is multiplied, ± its Monte Carlo standard "
     "error. Small changes mean that the data, not the prior, carry the statement."
 )
+_KINDS = {
+    "coupons": "coupons' stress, against the law",
+    "coupon strength": "coupons' strength, against its scatter",
+    "force": "forces",
+}
 
 
 def checks(folder: ResultsFolder) -> Table:
@@ -29,24 +34,28 @@ def _check(entry: dict[str, Any]) -> tuple[str, ...]:
     p = words.number(entry["p"], 2) if words.is_number(entry["p"]) else words.withheld(entry.get("reason"))
     chi2 = entry["chi2_per_reading"]
     chi = words.fixed(chi2, 2) if words.is_number(chi2) else words.DASH
-    return entry["kind"], entry.get("piece") or words.DASH, words.number(entry["readings"]), chi, p
+    kind, piece = _KINDS.get(entry["kind"], entry["kind"]), entry.get("piece") or words.DASH
+    return kind, piece, words.number(entry["readings"]), chi, p
 
 
 def sensitivity(folder: ResultsFolder) -> Table:
-    """One row for each prior, factor and reliability."""
-    rows = [_change(entry) for entry in folder.results["prior_sensitivity"]]
-    heads = ("Prior", "Scale times", "Demand", "Share of parts", "Change of the guaranteed load")
-    return Table("Prior sensitivity", heads, rows, (0, 2), _SENSITIVITY, "No prior was varied.")
+    """One row a prior, one column for each factor and share of parts."""
+    found = folder.results["prior_sensitivity"]
+    columns = sorted({(e["factor"], e["reliability"]) for e in found})
+    cells = {(_prior(e), e["factor"], e["reliability"]): _change(e) for e in found}
+    names = dict.fromkeys(_prior(e) for e in found)
+    rows = [(name, *[cells.get((name, *column), words.DASH) for column in columns]) for name in names]
+    heads = ("Prior", *[f"scale × {words.given(f)}, {words.share(r)} of parts" for f, r in columns])
+    return Table("Prior sensitivity", heads, rows, (0,), _SENSITIVITY, "No prior was varied.")
 
 
-def _change(entry: dict[str, Any]) -> tuple[str, ...]:
-    head = (
-        entry["prior"],
-        words.given(entry["factor"]),
-        entry.get("demand") or "all",
-        words.share(entry["reliability"]),
-    )
+def _prior(entry: dict[str, Any]) -> str:
+    return entry["prior"].replace("_", " ") + (f", {entry['demand']}" if entry.get("demand") else "")
+
+
+def _change(entry: dict[str, Any]) -> str:
     if not words.is_number(entry["change"]):
-        return (*head, words.withheld(entry.get("reason")))
+        return words.withheld(entry.get("reason"))
     change = words.percent(entry["change"], 1, signed=True)
-    return (*head, f"{change} ± {words.percent(entry['error'], 1)}" if words.is_number(entry["error"]) else change)
+    text = f"{change} ± {words.percent(entry['error'], 1)}" if words.is_number(entry["error"]) else change
+    return f"{text} ({entry['reason']})" if entry.get("reason") else text

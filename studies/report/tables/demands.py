@@ -8,6 +8,11 @@ from pullback.studies.report import words
 from pullback.studies.report.load import ResultsFolder
 from pullback.studies.report.tables.base import Table
 
+_GUARANTEED_NOTE = (
+    "The load that at least this share of parts carries, with this confidence. Loads and margins are rounded down."
+)
+_NOT_EXACT = " Where the requirement is uncertain or varies, the margin counts that too; it is not load / required − 1."
+_BELOW = " Shares below one in ten times the number of coupons are not given as numbers: coupons cannot show them."
 _SHORTFALL_NOTE = (
     "Median and interval are predictive for one part: differences between parts and what is not known, together. "
     "Shortfall is the share of parts that carry less than required, with its upper bound."
@@ -16,13 +21,12 @@ _SHORTFALL_NOTE = (
 
 def required(margin: dict[str, Any]) -> str:
     """What is required, with the spread of an uncertain or varying demand."""
-    text = f"{words.given(margin['required'])} {words.unit(margin['unit'])}"
-    ends = margin.get("required_interval")
-    if ends and all(words.is_number(end) for end in ends):
-        kind = margin.get("required_kind", "")
-        _, _, span = words.estimate(margin["required"], None, ends)
-        text += f" ({span}{', ' + kind if kind in ('varies', 'not known') else ''})"
-    return text
+    ends, unit = margin.get("required_interval"), words.unit(margin["unit"])
+    if not ends or not all(words.is_number(end) for end in ends):
+        return f"{words.given(margin['required'])} {unit}"
+    kind = margin.get("required_kind", "")
+    middle, _, span = words.estimate(margin["required"], None, ends)
+    return f"{middle} {unit} ({span}{', ' + kind if kind in ('varies', 'not known') else ''})"
 
 
 def named(margin: dict[str, Any]) -> str:
@@ -44,7 +48,9 @@ def guaranteed(folder: ResultsFolder) -> Table:
         "Margin",
         "Result",
     )
-    note = "The load that at least this share of parts carries, with this confidence. Rounded down."
+    note = _GUARANTEED_NOTE
+    if any(margin.get("required_interval") for margin in folder.results["margins"]):
+        note += _NOT_EXACT
     if not stated:
         note += " The statement is withheld: the computed loads and margins are not guaranteed."
     return Table(
@@ -71,9 +77,8 @@ def _guaranteed(margin: dict[str, Any], entry: dict[str, Any], stated: bool) -> 
 
 
 def _result(met: str, stated: bool) -> str:
-    if stated:
-        return f"{words.SIGN[met]} {met}"
-    return f"{words.SIGN['not shown']} not shown (as computed: {met})"
+    shown = met if stated else "not shown"
+    return f"{words.SIGN[shown]} {shown}"
 
 
 def expected(folder: ResultsFolder) -> Table:
@@ -87,7 +92,10 @@ def expected(folder: ResultsFolder) -> Table:
         "Shortfall, median",
         "Shortfall, upper bound",
     )
-    return Table("Expected", heads, rows, (0,), _SHORTFALL_NOTE, "The study states no demand.")
+    note = _SHORTFALL_NOTE
+    if any((margin["shortfall_probability"] or {}).get("below") for margin in folder.results["margins"]):
+        note += _BELOW
+    return Table("Expected margins", heads, rows, (0,), note, "The study states no demand.")
 
 
 def _expected(margin: dict[str, Any]) -> tuple[str, ...]:
@@ -112,4 +120,4 @@ def shortfall(found: dict[str, Any] | None) -> tuple[str, str]:
 def _share_or_below(value: Any, least: Any) -> str:
     if words.is_number(value):
         return f"{words.number(100.0 * value, 2)}{words.NO_BREAK}%"
-    return f"below {words.number(100.0 * least, 2)}{words.NO_BREAK}%" if words.is_number(least) else words.DASH
+    return f"below {words.ceil_percent(least)}" if words.is_number(least) else words.DASH

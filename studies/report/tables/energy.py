@@ -8,13 +8,17 @@ from pullback.studies.report import words
 from pullback.studies.report.load import ResultsFolder
 from pullback.studies.report.tables.base import Table
 
+_NOTE = (
+    "Medians, with the interval where the results give one, for the demand that requires the greatest load. This energy "
+    "is set free when a part breaks or slips."
+)
+
 
 def energy(folder: ResultsFolder) -> Table:
     """One row a demand."""
     rows = [(e["demand"], _at(e, "at_demand"), _at(e, "at_capacity"), e["unit"]) for e in folder.results["energy"]]
     heads = ("Demand", "At the load required", "At failure", "Unit")
-    note = "Medians, with the interval where the results give one. This energy is set free when a part breaks or slips."
-    return Table("Stored elastic energy", heads, rows, (0, 3), note)
+    return Table("Stored elastic energy", heads, rows, (0, 3), _NOTE)
 
 
 def _at(entry: dict[str, Any], key: str) -> str:
