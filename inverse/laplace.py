@@ -9,12 +9,13 @@ from numpy.typing import NDArray
 
 from pullback.inverse.evidence import Surface
 from pullback.inverse.fit import Fit, Node
-from pullback.inverse.layout import Field, Layout
+from pullback.inverse.layout import Field, Layout, Values
 from pullback.inverse.posterior import Guess, Posterior
 
 Array = NDArray[np.float64]
 
 _MOST_INFORMATION = 1e12
+_HEARD = 0.1
 
 
 @dataclass(frozen=True)
@@ -35,10 +36,20 @@ def recentred(fit: Fit) -> Layout:
     blocks = list(layout.blocks)
     for k, b in enumerate(blocks):
         if isinstance(b, Field):
-            # The Jacobian counts in the fit's coordinates, which are beta over their own scale.
-            by_beta = information[layout.slices[b.name]] / b.scale(values)[1][:, 0] ** 2
-            blocks[k] = b.informed_by(np.minimum(by_beta, _MOST_INFORMATION), values[b.name][:, 0])
+            blocks[k] = _expecting(b, information[layout.slices[b.name]], values)
     return Layout(blocks, layout.constants)
+
+
+def _expecting(field: Field, information: Array, values: Values) -> Field:
+    """The field whose coordinates expect the fit: `information` (m,) by its present, standard normal coordinates.
+
+    `centre` is what the data alone would say of a coefficient: the fit's value, its shrinkage undone. Where the data
+    say next to nothing there is nothing to undo.
+    """
+    beta, scale = values[field.name][:, 0], field.scale(values)[1][:, 0]
+    heard = information > _HEARD
+    centre = np.where(heard, beta * (1.0 + information) / np.where(heard, information, 1.0), 0.0)
+    return field.informed_by(np.minimum(information / scale**2, _MOST_INFORMATION), centre)
 
 
 def laplace(fit: Fit, n: int, seed: int) -> Laplace:

@@ -46,7 +46,7 @@ def write_posterior(path: Path, n: Numbers) -> None:
     margin = np.quantile(n.capacity, 0.1, axis=1)[:, None] / REQUIRED - 1.0
     margin = np.resize(margin, (CHAINS, DRAWS, 1))
     variables = {k: xr.Variable(("chain", "draw"), v, {"unit": UNITS.get(k, "")}) for k, v in draws.items()}
-    variables["margin"] = xr.Variable(("chain", "draw", "demand"), margin, {"unit": ""})
+    thinned = xr.Variable(("chain", "draw", "demand"), margin[:, ::2], {"unit": ""})
     shape = (CHAINS, DRAWS)
     stats = {
         "lp": rng.normal(-210.0, 3.4, shape),
@@ -56,7 +56,8 @@ def write_posterior(path: Path, n: Numbers) -> None:
     }
     prior = {k: (("chain", "draw"), rng.normal(m, s, (1, 2000))) for k, (m, s) in PRIOR.items()}
     groups = {
-        "posterior": xr.Dataset(variables, coords={"demand": ["hold-down"]}),
+        "posterior": xr.Dataset(variables),
+        "predictions": xr.Dataset({"margin": thinned}, coords={"demand": ["hold-down"]}),
         "sample_stats": xr.Dataset({k: (("chain", "draw"), v) for k, v in stats.items()}),
         "prior": xr.Dataset(prior),
     }
@@ -94,7 +95,7 @@ def parameters_table(n: Numbers) -> pd.DataFrame:
     rows = [
         {"parameter": k, **v, "lower": v["interval"][0], "upper": v["interval"][1]} for k, v in parameters(n).items()
     ]
-    return pd.DataFrame(rows).drop(columns=["interval", "prior", "symbol"], errors="ignore")
+    return pd.DataFrame(rows).drop(columns=["interval", "symbol"], errors="ignore")
 
 
 def marks(n: Numbers) -> pd.DataFrame:
@@ -117,7 +118,8 @@ def readings(n: Numbers) -> pd.DataFrame:
     force = bands(n.force)["median"]
     frame: dict[str, Any] = {"piece": "P1", "step": STEPS, "travel read [mm]": TRAVEL + rng.normal(0, 0.05, 8)}
     frame |= columns(np.resize(TRAVEL, (9, 8)) + rng.normal(0, 0.04, (9, 8)), "travel", "mm")
-    frame |= {"force read [N]": force + rng.normal(0, 0.12, 8)} | columns(n.force, "force", "N")
+    frame |= {"force read [N]": force + rng.normal(0, 0.12, 8), "force standard error [N]": 0.12}
+    frame |= columns(n.force, "force", "N")
     return pd.DataFrame(frame | {"file": "P1_readings.csv", "line": np.arange(2, 10)})
 
 
@@ -164,7 +166,8 @@ def coupons(n: Numbers) -> pd.DataFrame:
     elongation = np.array([3.62, 3.81, 3.93, 4.05, 4.12, 4.2, 4.28, 4.33, 4.41, 4.5, 4.58, 4.1])
     curves = np.stack([stress(1 + elongation, *(n.thinned(p)[d] for p in CENTRE)) for d in range(200)])
     read = bands(curves)["median"] * (1 + rng.normal(0, 0.03, 12))
-    frame = {"coupon": np.arange(1, 13), "measure read": elongation, "nominal stress read [MPa]": read}
+    frame = {"coupon": np.arange(1, 13), "measure read": elongation, "elongation read": elongation}
+    frame |= {"nominal stress read [MPa]": read}
     frame |= columns(curves, "nominal stress", "MPa")
     return pd.DataFrame(frame | {"broke": ["yes"] * 11 + ["no"], "line": np.arange(2, 14)})
 

@@ -54,6 +54,7 @@ def parameters(n: Numbers) -> dict[str, Any]:
             "interval": [band["lower"], band["upper"]],
             "level": 0.95,
             "informed": None if flat else 0.97,
+            "meaning": f"what the {name.replace('_', ' ')} is",
             "prior": "flat in its logarithm" if flat else "log-normal, median 0.31, geometric standard deviation 3",
         }
     return found

@@ -18,7 +18,7 @@ from pullback.inverse.sampling.moves import Hamiltonian
 Array = NDArray[np.float64]
 Progress = Callable[[str, float], None]
 
-WALKERS = 16
+WALKERS = 8
 SETTLE, ESTIMATE, TUNE = 60, 240, 60
 """Warm-up: settle the step, estimate the metric, tune the step to it; then both are frozen."""
 LEAST_DRAWS, BLOCK, MOST_DRAWS = 500, 250, 20_000

@@ -81,5 +81,7 @@ def test_a_printed_figure_stays_with_its_caption_and_pages_are_numbered(
     for number, sheet in enumerate(sheets, start=1):
         assert f"page {number} of {len(sheets)}" in sheet and "study 3f3f3f3f3f3f3f3f" in sheet
     flat = [re.sub(r"\s+", " ", sheet) for sheet in sheets]
+    if not shifts:
+        assert all(part in flat[0] for part in ("Required and guaranteed", "Not covered", "Cautions", "checked, date"))
     for first, last, caption in TOGETHER:
         assert any(first in sheet and last in sheet and caption in sheet for sheet in flat), f"cut: '{caption}'"

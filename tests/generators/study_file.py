@@ -85,4 +85,8 @@ force = "{demand:.3g} N"
 [statement]
 reliability = [0.90]
 confidence = 0.95
+
+[sampler]
+effective_samples = 500
+max_minutes = 6
 """

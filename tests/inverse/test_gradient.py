@@ -164,7 +164,7 @@ def test_every_unknown_is_seen():
     moved = np.sum(posterior.jacobian(near_the_fit(posterior)[0]) ** 2, axis=0) > 1e-12
     unseen = [n for n, m in zip(posterior.layout.names(), moved, strict=True) if not m]
     assert [n for n in unseen if not n.startswith("P1 field")] == ["strength_scale", "strength_modulus"]
-    assert "P1 field[10]" not in unseen and len(posterior.layout.blocks) == 19
+    assert "P1 field[10]" not in unseen and len(posterior.layout.blocks) == 20
     assert {t.kind for t in posterior.terms} == {
         "marks", "force", "travel", "sections", "mass", "coupon strength", "coupons", "survival",
     }  # fmt: skip

@@ -19,7 +19,8 @@ if TYPE_CHECKING:
 class Figure:
     """Panels side by side, a title, and a caption that says what to see.
 
-    `layout`: "pair" two panels a row, "wide" one over the full width, "beside" one with the caption at its side.
+    `layout`: "pair" two panels a row, "wide" one over the full width, "beside" and "broad" one with the
+    caption at its side, over half and over most of the width.
 
     A figure without panels gives in `absent` the reason.
     """

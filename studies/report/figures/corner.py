@@ -20,18 +20,22 @@ _CAPTION = (
     "the data fix a combination of the two better than either; a posterior that fills its prior has learnt nothing."
 )
 _LEVELS = (0.95, 0.50)
-_MOST, _BINS = 7, 24
+_MOST, _SMALL, _BINS = 7, 3, 24
 
 
 def draw(folder: ResultsFolder) -> list[Figure]:
-    """One square figure over the full width; at most seven parameters."""
+    """One square figure, its caption beside it where it is small; at most seven parameters."""
     names = law_parameters(folder)
     if not names:
         raise NotDrawn("posterior.nc holds no draws of the law's parameters.")
     flat = "; a flat prior is not drawn" if any(name not in folder.prior for name in names) else ""
     told = f"Histograms of {', '.join(names)} and regions of each pair."
     panel = PanelDrawn(_grid(folder, names), "Posterior of the law's parameters", told)
-    return [figure("corner", TITLE, _CAPTION.format(flat=flat), [panel], layout="wide")]
+    return [figure("corner", TITLE, _CAPTION.format(flat=flat), [panel], layout=_layout(names))]
+
+
+def _layout(names: list[str]) -> str:
+    return "broad" if len(names) <= _SMALL else "wide"
 
 
 def law_parameters(folder: ResultsFolder) -> list[str]:
@@ -48,10 +52,11 @@ def _of_law(name: str) -> bool:
 def _grid(folder: ResultsFolder, names: list[str]) -> Any:
     from matplotlib.figure import Figure as Canvas
 
-    side = 2 * style.WIDTH
+    side = (1.4 if _layout(names) == "broad" else 2.0) * style.WIDTH
     canvas = Canvas(figsize=(side, side * (0.86 if len(names) > 2 else 0.6)))
     grid = canvas.subplots(len(names), len(names), squeeze=False)
-    canvas.subplots_adjust(left=0.095, right=0.985, bottom=0.09, top=0.985, wspace=0.09, hspace=0.09)
+    bottom = 0.5 / canvas.get_size_inches()[1]
+    canvas.subplots_adjust(left=0.65 / side, right=0.985, bottom=bottom, top=0.985, wspace=0.09, hspace=0.09)
     factors = {name: style.power_of_ten(folder.posterior[name].values) for name in names}
     for row, below in enumerate(names):
         for place, across in enumerate(names):
@@ -127,7 +132,7 @@ def _height_holding(density: Array, level: float) -> float:
 def _named(
     axes: Any, folder: ResultsFolder, row: int, place: int, names: list[str], factors: dict[str, tuple[float, str]]
 ) -> None:
-    axes.locator_params(axis="x", nbins=4)
+    axes.locator_params(axis="x", nbins=3)
     last = row == len(names) - 1
     axes.tick_params(labelbottom=last, labelleft=place == 0 and row > 0)
     if place < row:

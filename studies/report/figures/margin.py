@@ -16,7 +16,7 @@ TITLE = "Margin"
 _CAPTION = (
     "Predictive distribution of the margin, capacity / required − 1: parts differ and the data leave some things "
     "open, both are in it. The part of the bars left of the heavy line at zero falls short (hatched). Broken lines: "
-    "guaranteed margins, each named by the share of parts and the confidence (90/95: 90 % of parts, 95 % "
+    "{} margins, each named by the share of parts and the confidence (90/95: 90 % of parts, 95 % "
     "confidence). The bar above spans the 95 % interval, with the median as a point."
 )
 
@@ -26,7 +26,9 @@ def draw(folder: ResultsFolder) -> list[Figure]:
     margins = folder.results["margins"]
     need(folder, "margin_distribution")
     panels = [_panel(folder, margin) for margin in margins]
-    return [figure("margin", TITLE, _CAPTION, panels, layout="wide" if len(panels) == 1 else "pair")]
+    stated = folder.results["verdict"]["state"] == "stated"
+    caption = _CAPTION.format("guaranteed" if stated else "computed, not guaranteed,")
+    return [figure("margin", TITLE, caption, panels, layout="wide" if len(panels) == 1 else "pair")]
 
 
 def _panel(folder: ResultsFolder, margin: dict[str, Any]) -> PanelDrawn:

@@ -125,7 +125,7 @@ def short(text: str, most: int = 16) -> str:
     return flat if len(flat) <= most else flat[: most - 1] + "…"
 
 
-_LETTER, _HANDLE, _ROW = 0.056, 0.44, 0.14  # inches at the legend's size: a letter, a handle with its gaps, a line
+_LETTER, _HANDLE, _ROW = 0.05, 0.37, 0.14  # inches at the legend's size: a letter, a handle with its gaps, a line
 
 
 def legend(axes: Axes) -> None:
@@ -139,7 +139,7 @@ def legend(axes: Axes) -> None:
     while columns > 1 and _legend_width(labels, columns) > room:
         columns -= 1
     rows = -(-len(labels) // columns)
-    axes.set_position((box.x0, box.y0, box.width, box.height - (rows - 1) * _ROW / size[1]))
+    axes.set_position((box.x0, box.y0, box.width, box.height))
     order = [k for c in range(columns) for k in range(c, len(labels), columns)]  # read along lines, not down columns
     axes.legend(
         [handles[k] for k in order], [labels[k] for k in order], ncols=columns, loc="lower left",

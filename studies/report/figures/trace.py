@@ -27,16 +27,16 @@ def draw(folder: ResultsFolder) -> list[Figure]:
     series = _series(folder)
     if not series:
         raise NotDrawn("posterior.nc holds no chains.")
-    chains, draws = next(iter(series.values())).shape
-    thin = max(1, draws // _POINTS)
-    panels = [_panel(name, values, thin, folder) for name, values in series.items()]
-    thinned = "" if thin == 1 else f", one draw in {thin} shown"
+    chains, _ = next(iter(series.values())).shape
+    draws = max(values.shape[1] for values in series.values())
+    panels = [_panel(name, values, folder) for name, values in series.items()]
+    thinned = "" if draws <= _POINTS else f", some {_POINTS} of up to {draws} draws shown"
     return [figure("trace", TITLE, _CAPTION.format(chains=chains, thinned=thinned), panels)]
 
 
 def _series(folder: ResultsFolder) -> dict[str, Array]:
     """Margins first, then scalars, each (chain, draw)."""
-    margin = folder.posterior.get("margin")
+    margin = folder.predictions.get("margin") or folder.posterior.get("margin")
     found: dict[str, Array] = {}
     if margin is not None and margin.values.ndim == 3:
         labels = margin.labels or tuple(str(k) for k in range(margin.values.shape[2]))
@@ -45,7 +45,8 @@ def _series(folder: ResultsFolder) -> dict[str, Array]:
     return dict(list((found | scalars).items())[:_MOST])
 
 
-def _panel(name: str, values: Array, thin: int, folder: ResultsFolder) -> PanelDrawn:
+def _panel(name: str, values: Array, folder: ResultsFolder) -> PanelDrawn:
+    thin = max(1, values.shape[1] // _POINTS)
     drawn = folder.posterior.get(name)
     factor, power = style.power_of_ten(values)
     unit = f"{power}{drawn.unit if drawn else ''}".strip() or "1"

@@ -45,8 +45,10 @@ def sensitivity(folder: ResultsFolder) -> Table:
     cells = {(_prior(e), e["factor"], e["reliability"]): _change(e) for e in found}
     names = dict.fromkeys(_prior(e) for e in found)
     rows = [(name, *[cells.get((name, *column), words.DASH) for column in columns]) for name in names]
+    doubts = sorted({f"{e['prior'].replace('_', ' ')}: {e['reason']}" for e in found if _doubtful(e)})
+    note = _SENSITIVITY + (f" * {'; '.join(doubts)}." if doubts else "")
     heads = ("Prior", *[f"scale × {words.given(f)}, {words.share(r)} of parts" for f, r in columns])
-    return Table("Prior sensitivity", heads, rows, (0,), _SENSITIVITY, "No prior was varied.")
+    return Table("Prior sensitivity", heads, rows, (0,), note, "No prior was varied.")
 
 
 def _prior(entry: dict[str, Any]) -> str:
@@ -58,4 +60,9 @@ def _change(entry: dict[str, Any]) -> str:
         return words.withheld(entry.get("reason"))
     change = words.percent(entry["change"], 1, signed=True)
     text = f"{change} ± {words.percent(entry['error'], 1)}" if words.is_number(entry["error"]) else change
-    return f"{text} ({entry['reason']})" if entry.get("reason") else text
+    return f"{text} *" if _doubtful(entry) else text
+
+
+def _doubtful(entry: dict[str, Any]) -> bool:
+    """A change that is given, with a reason why not to lean on it."""
+    return words.is_number(entry["change"]) and bool(entry.get("reason"))

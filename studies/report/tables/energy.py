@@ -9,8 +9,8 @@ from pullback.studies.report.load import ResultsFolder
 from pullback.studies.report.tables.base import Table
 
 _NOTE = (
-    "Medians, with the interval where the results give one, for the demand that requires the greatest load. This energy "
-    "is set free when a part breaks or slips."
+    "Medians, with the interval where the results give one, for the demand that requires the greatest load. This "
+    "energy is set free when a part breaks or slips."
 )
 
 

@@ -30,14 +30,14 @@ def _row(r: dict[str, Any]) -> tuple[str, ...]:
     else:
         number, bound = words.found(number), limit(most)
     if words.is_number(most):
-        bound = f"{_side(r['rule'], most)} {bound}"
+        bound = f"{_side(r['rule'], most)}{words.NO_BREAK}{bound}"
     return r["rule"], words.plain(r["text"]), number, bound, _PASSED[r["passed"]]
 
 
 def _side(rule: str, most: float) -> str:
     """Effective draws and a small p are bounded from below, all else from above."""
     below = (rule == "sampled" and most > 2.0) or (rule == "fits" and most < 0.5)
-    return "at least" if below else "at most"
+    return f"at{words.NO_BREAK}{'least' if below else 'most'}"
 
 
 def limit(found: Any) -> str:
