@@ -32,7 +32,7 @@ class Basis:
         """
         boundary = 0.5 * length + 2.0 * ell_high
         terms = int(np.ceil(3.0 * boundary / ell_low))
-        return cls(0.5 * length, boundary, np.arange(1, terms + 1) * np.pi / (2.0 * boundary))
+        return cls(0.5 * length, boundary, np.arange(1.0, terms + 1.0) * float(np.pi / (2.0 * boundary)))
 
     def at(self, station: Array) -> Array:
         """phi_k at each station (mm), shape (stations, m)."""

@@ -24,9 +24,17 @@ Values = dict[str, Array]
 class Block(Protocol):
     """A run of coordinates with one name."""
 
-    name: str
-    unit: str
-    size: int
+    @property
+    def name(self) -> str:
+        """Name of the value."""
+
+    @property
+    def unit(self) -> str:
+        """Unit of the value."""
+
+    @property
+    def size(self) -> int:
+        """Number of coordinates."""
 
     def unpack(self, q: Array, values: Values) -> Array:
         """Value for q (size, lanes); blocks before this one are in `values` already."""

@@ -241,7 +241,7 @@ def _from_marks(pull: Pull, piece: Piece, start: Array, missing: NDArray[np.bool
 
 
 def _terms(study: Study, pull: Pull, piece: Piece, outline: Outline) -> list[Term]:
-    g, terms = study.gauges, []
+    g, terms = study.gauges, list[Term]()
     placement = g.mark_placement.value if g.mark_placement else 0.0
     if pull.marks is not None:
         assert g.mark_reading is not None
@@ -265,8 +265,8 @@ def _terms(study: Study, pull: Pull, piece: Piece, outline: Outline) -> list[Ter
         terms.append(Sections(piece, s.station, s.area, s.relative_error, placement, log, slope))
     if pull.mass is not None:
         assert g.mass_reading is not None
-        sigma = float(g.mass_reading.sigma(np.array([pull.mass]))[0])
-        terms.append(Mass(pull.piece, pull.mass - pull.mass_outside, sigma))
+        error = float(g.mass_reading.sigma(np.array([pull.mass]))[0])
+        terms.append(Mass(pull.piece, pull.mass - pull.mass_outside, error))
     return terms
 
 
@@ -316,7 +316,7 @@ def _strength_terms(
     study: Study, pull: Pull, piece: Piece, criterion: Criterion, strength: Scatter
 ) -> list[Term]:
     assert study.strength is not None
-    coupons, terms = study.strength.coupons, []
+    coupons, terms = study.strength.coupons, list[Term]()
     terms.append(CouponStrength(strength, coupon_measure(study), coupons.volume, coupons.broke))
     both = coupon_pairs(study)
     if both is not None:

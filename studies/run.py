@@ -10,10 +10,10 @@ import numpy as np
 
 import pullback
 from pullback.studies.calibration import Progress, _silent, approximate, calibrate, sample
-from pullback.studies.margins import Statement, margins
 from pullback.studies.read import read_study
 from pullback.studies.results.write import in_place, write_results
 from pullback.studies.screen.findings import screen
+from pullback.studies.statement import Statement, margins
 
 
 @dataclass(frozen=True)

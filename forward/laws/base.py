@@ -33,9 +33,17 @@ class Law(Protocol):
     the moduli (MPa; MJ/m³ = MPa).
     """
 
-    name: str
-    source: str
-    parameters: tuple[Parameter, ...]
+    @property
+    def name(self) -> str:
+        """Name in the registry."""
+
+    @property
+    def source(self) -> str:
+        """Author, place and year."""
+
+    @property
+    def parameters(self) -> tuple[Parameter, ...]:
+        """Parameters in the order of `theta`."""
 
     def stress(self, stretch: Array, theta: Array) -> Array:
         """Nominal stress P = dW/dstretch."""

@@ -39,21 +39,21 @@ class Ogden:
     def stress(self, stretch: Array, theta: Array) -> Array:
         """P, see the class."""
         log = np.log(stretch)
-        total = 0.0
+        total = np.zeros(())
         for mu, alpha in self._pairs(theta):
             total = total + mu * (np.exp((alpha - 1.0) * log) - np.exp((-0.5 * alpha - 1.0) * log))
-        return np.asarray(total)
+        return total
 
     def stress_and_slope(self, stretch: Array, theta: Array) -> tuple[Array, Array]:
         """P, and dP/dstretch = sum of mu ((alpha−1) stretch^(alpha−2) + (alpha/2+1) stretch^(−alpha/2−2))."""
         log, r = np.log(stretch), 1.0 / stretch
-        stress, slope = 0.0, 0.0
+        stress, slope = np.zeros(()), np.zeros(())
         for mu, alpha in self._pairs(theta):
             up = mu * np.exp((alpha - 1.0) * log)
             down = mu * np.exp((-0.5 * alpha - 1.0) * log)
             stress = stress + (up - down)
             slope = slope + ((alpha - 1.0) * up + (0.5 * alpha + 1.0) * down) * r
-        return np.asarray(stress), np.asarray(slope)
+        return stress, slope
 
     def stress_by_parameter(self, stretch: Array, theta: Array) -> Array:
         """dP/dmu and dP/dalpha of each term in turn."""
@@ -67,10 +67,10 @@ class Ogden:
     def energy(self, stretch: Array, theta: Array) -> Array:
         """W, see the module."""
         log = np.log(stretch)
-        total = 0.0
+        total = np.zeros(())
         for mu, alpha in self._pairs(theta):
             total = total + mu / alpha * (np.expm1(alpha * log) + 2.0 * np.expm1(-0.5 * alpha * log))
-        return np.asarray(total)
+        return total
 
     def energy_by_parameter(self, stretch: Array, theta: Array) -> Array:
         """dW/dmu and dW/dalpha of each term in turn."""

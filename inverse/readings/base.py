@@ -20,8 +20,13 @@ Array = NDArray[np.float64]
 class Term(Protocol):
     """One kind of reading, of one piece or, where `piece` is None, of the compound."""
 
-    kind: str
-    piece: str | None
+    @property
+    def kind(self) -> str:
+        """Kind of reading."""
+
+    @property
+    def piece(self) -> str | None:
+        """Name of the piece, or None."""
 
     @property
     def count(self) -> int:

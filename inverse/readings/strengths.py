@@ -62,9 +62,11 @@ class Survival:
 
     kind = "survival"
     count = 0
+    """It is no reading that could be simulated and compared."""
 
     def __init__(self, piece: str, criterion: Criterion, scatter: Scatter, step: int) -> None:
-        self.piece, self.criterion, self.scatter, self.step = piece, criterion, scatter, step
+        self.piece: str | None = piece
+        self.criterion, self.scatter, self.step = criterion, scatter, step
 
     def hazard(self, values: Values, prediction: Prediction) -> tuple[Array, Array, Array, tuple[Array, Array]]:
         """As `Scatter.hazard`, at this step."""
@@ -88,6 +90,14 @@ class Survival:
         if self.criterion.by_stress:
             self._through_law(prediction, -by_measure, cot)
         return -total
+
+    def chi_square(self, values: Values, prediction: Prediction | None) -> Array:
+        """Nothing to compare: zero."""
+        return np.zeros(values[self.scatter.parameter_names[0]].size)
+
+    def simulate_chi_square(self, values: Values, prediction: Prediction | None, rng: np.random.Generator) -> Array:
+        """Nothing to compare: zero."""
+        return self.chi_square(values, prediction)
 
     def _through_law(self, prediction: Prediction, g: Array, cot: Cotangent) -> None:
         """The stress depends on the law's parameters and the piece's stiffness at a given stretch too."""

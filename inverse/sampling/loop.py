@@ -48,7 +48,8 @@ def sample(
     """Sample the posterior from its Laplace approximation until every unknown has `effective` draws."""
     began, posterior = time.monotonic(), start.posterior
     dim = posterior.layout.dim
-    move = Hamiltonian(posterior.value_and_gradient, np.linalg.cholesky(start.covariance), seed, 0.5 * dim**-0.25)
+    root = np.asarray(np.linalg.cholesky(start.covariance), float)
+    move = Hamiltonian(posterior.value_and_gradient, root, seed, 0.5 * dim**-0.25)
     sampler = emcee.EnsembleSampler(WALKERS, dim, posterior.log_density, moves=move, vectorize=True)
     state = emcee.State(_starting_points(start, seed), log_prob=None)
     state = _warm_up(sampler, move, state, start, progress)

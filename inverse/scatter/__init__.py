@@ -7,7 +7,8 @@ from pullback.inverse.scatter.weibull import Weibull
 
 def scatter(name: str, reference_volume: float) -> Scatter:
     """The family `name`; KeyError for one that is not known."""
-    return {"weibull": Weibull(reference_volume), "lognormal": LogNormalStrength(reference_volume)}[name]
+    families: dict[str, Scatter] = {f.name: f for f in (Weibull(reference_volume), LogNormalStrength(reference_volume))}
+    return families[name]
 
 
 __all__ = ["LogNormalStrength", "Scatter", "Weibull", "scatter"]

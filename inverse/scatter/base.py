@@ -20,9 +20,17 @@ Array = NDArray[np.float64]
 class Scatter(Protocol):
     """A family of strength distributions."""
 
-    name: str
-    parameter_names: tuple[str, str]
-    reference_volume: float
+    @property
+    def name(self) -> str:
+        """Name of the family."""
+
+    @property
+    def parameter_names(self) -> tuple[str, str]:
+        """Names of its two unknowns."""
+
+    @property
+    def reference_volume(self) -> float:
+        """Volume that the first parameter refers to, mm³."""
 
     def default_priors(self, measure: Array, broke: NDArray[np.bool_]) -> tuple[Prior, Prior]:
         """The right-Haar prior: flat in log location and in log scale, with starting values from the coupons."""

@@ -165,7 +165,7 @@ def hazard_curve(
     volume = model.volume(parts.log_area)
     bracket = _bracket(model, table, parts, hanging, strength, volume)
     log_load = np.linspace(*bracket, _LOADS)
-    log_s = table.log_measure_at(_log_stress(parts, hanging, log_load))
+    log_s = _log_measure(model, table, parts, _log_stress(parts, hanging, log_load))
     log_h = np.minimum(model.scatter.log_hazard(log_s, volume[:, :, None], *strength), 50.0)
     return HazardCurve(log_load, np.maximum(log_h, -60.0))
 
@@ -179,6 +179,12 @@ def _log_stress(parts: Sections, hanging: Array, log_load: Array) -> Array:
         return np.log(np.maximum(np.exp(log_load) + hanging[:, :, None], 0.0)) - per
 
 
+def _log_measure(model: PartModel, table: LawTable, parts: Sections, log_stress: Array) -> Array:
+    """log of the criterion's measure; one that is a stress is what the section bears, the part's stiffness included."""
+    log_s = table.log_measure_at(log_stress)
+    return log_s + np.log(parts.stiffness)[:, None] if model.criterion.by_stress else log_s
+
+
 def _bracket(
     model: PartModel, table: LawTable, parts: Sections, hanging: Array, strength: tuple[float, float], volume: Array
 ) -> tuple[float, float]:
@@ -187,13 +193,16 @@ def _bracket(
     ends = np.array([np.argmin(log_area), np.argmax(log_area)])
     pair = Sections(parts.log_area[:, ends], parts.stiffness[ends])
     middle = float(log_area.mean())
-    log_load = np.linspace(middle + table.start, middle + table.end + 0.4, _COARSE)
-    log_s = table.log_measure_at(_log_stress(pair, hanging[:, ends], log_load))
-    log_h = model.scatter.log_hazard(log_s, volume[:, ends, None], *strength)
-    begun, done = np.any(log_h > _LOW, axis=0), np.all(log_h > _HIGH, axis=0)
-    low = log_load[max(int(np.argmax(begun)) - 1, 0)]
-    high = log_load[min(int(np.argmax(done)) + 1 if np.any(done) else _COARSE - 1, _COARSE - 1)]
-    return float(low), float(max(high, low + 0.1))
+    low, high = middle + table.start, middle + table.end + 0.4
+    # The second pass narrows what the first, over all that the law carries, can only find in great steps.
+    for _ in range(2):
+        log_load = np.linspace(low, high, _COARSE)
+        log_s = _log_measure(model, table, pair, _log_stress(pair, hanging[:, ends], log_load))
+        log_h = model.scatter.log_hazard(log_s, volume[:, ends, None], *strength)
+        begun, done = np.any(log_h > _LOW, axis=0), np.all(log_h > _HIGH, axis=0)
+        low = log_load[max(int(np.argmax(begun)) - 1, 0)]
+        high = log_load[min(int(np.argmax(done)) + 1 if np.any(done) else _COARSE - 1, _COARSE - 1)]
+    return float(low), float(max(high, low + 0.02))
 
 
 def capacity(
@@ -244,7 +253,7 @@ def _one_draw(
     part = Sections(parts.log_area[:, k : k + 1], parts.stiffness[k : k + 1])
     both = np.log(np.maximum(np.array([load, energy_load]), 1e-300))
     stress = _log_stress(part, hanging[:, k : k + 1], both)[:, 0]
-    log_s, volume = table.log_measure_at(stress[:, :1]), model.volume(part.log_area)
+    log_s, volume = _log_measure(model, table, part, stress[:, :1]), model.volume(part.log_area)
     # Just below a law's limit the measure is still finite there.
     log_s = np.minimum(log_s, table.log_measure[-1] + 1.0)
     where = model.scatter.shares(log_s, volume, *strength)[:, 0]

@@ -34,7 +34,7 @@ def _print_units() -> None:
     from pullback.studies.units import spellings
 
     for dimension, known in spellings().items():
-        click.echo(f"{dimension}: {', '.join(known)}")
+        click.echo(f"{dimension}: " + ", ".join(f"{spelling} ({factor:g})" for spelling, factor in known))
 
 
 def _print_study(study: Study) -> None:

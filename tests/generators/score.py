@@ -33,10 +33,11 @@ def score(results: dict[str, Any], true: dict[str, Any]) -> Score:
     for name, value in true["parameters"].items():
         one = results["parameters"][name]
         _note(found, f"{true['law']} {name}", value, *one["interval"])
-    area = next(iter(results["pieces"].values()))["area"]
+    piece = next(iter(results["pieces"].values()))
+    area = piece["area"]
     pairs = zip(true["section"]["station"], true["section"]["area"], strict=True)
     for part, (station, value) in zip(("1/4", "1/2", "3/4"), pairs, strict=True):
-        ends = (float(np.interp(station, area["station"], area[k])) for k in ("lower", "upper"))
+        ends = (float(np.interp(station, piece["station"], area[k])) for k in ("lower", "upper"))
         _note(found, f"section at {part}", value, *ends)
     found.ratio = _ratio(results, true)
     if found.ratio is not None:

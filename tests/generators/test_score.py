@@ -16,7 +16,7 @@ TRUE = {
 RESULTS = {
     "verdict": {"state": "stated"},
     "parameters": {"c10": {"interval": [0.29, 0.31]}, "c20": {"interval": [-0.006, -0.002]}},
-    "pieces": {"P1": {"area": {"station": [0.0, 100.0], "lower": [18.0, 22.0], "upper": [21.0, 24.0]}}},
+    "pieces": {"P1": {"station": [0.0, 100.0], "area": {"lower": [18.0, 22.0], "upper": [21.0, 24.0]}}},
     "next_part": {"capacity": [{"guaranteed": [{"reliability": 0.9, "confidence": 0.95, "value": 90.0}]}]},
 }
 

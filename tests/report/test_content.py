@@ -127,3 +127,7 @@ def test_a_bound_from_above_is_rounded_up() -> None:
     assert words.ceil_percent(0.00625) == f"0.63{words.NO_BREAK}%"
     assert words.ceil_percent(0.0083) == f"0.83{words.NO_BREAK}%"
     assert words.ceil_percent(0.01) == f"1.0{words.NO_BREAK}%"
+
+
+def test_force_readings_carry_their_own_errors(loaded: ResultsFolder) -> None:
+    assert "read − fitted, ±2 se" in figure(render(loaded), "force-0")

@@ -107,4 +107,5 @@ def _guaranteed(axes: Any, capacities: list[dict[str, Any]], kind: str) -> None:
         known = _known(capacity)
         if known:
             at, share = [g["value"] for g in known], [100 * (1 - g["reliability"]) for g in known]
-            axes.plot(at, share, "v", color=style.INK, markersize=6, label=kind.partition(",")[0], zorder=5, clip_on=False)
+            label = kind.partition(",")[0]
+            axes.plot(at, share, "v", color=style.INK, markersize=6, label=label, zorder=5, clip_on=False)

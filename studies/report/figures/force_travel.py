@@ -2,6 +2,10 @@
 
 from __future__ import annotations
 
+from typing import Any
+
+from typing import Any
+
 import numpy as np
 import pandas as pd
 
@@ -53,7 +57,7 @@ def _left_over(readings: pd.DataFrame) -> PanelDrawn:
     style.band(axes, travel[order], below, above, label="fitted, 95 %")
     left = column(readings, "force read [N]") - fitted.median
     error, name = _error(readings)
-    look = {"color": style.VERMILION, "mfc": "white", "mew": 1.0, "capsize": 2.5, "linewidth": 0.9}
+    look: dict[str, Any] = {"color": style.VERMILION, "mfc": "white", "mew": 1.0, "capsize": 2.5, "linewidth": 0.9}
     axes.errorbar(travel, left, error, fmt="o", label=name, **look)
     axes.axhline(0.0, color=style.GREY, linewidth=0.6)
     style.legend(axes)

@@ -139,7 +139,7 @@ def legend(axes: Axes) -> None:
     while columns > 1 and _legend_width(labels, columns) > room:
         columns -= 1
     rows = -(-len(labels) // columns)
-    axes.set_position((box.x0, box.y0, box.width, box.height))
+    axes.set_position((box.x0, box.y0, box.width, box.height - (rows - 1) * _ROW / size[1]))
     order = [k for c in range(columns) for k in range(c, len(labels), columns)]  # read along lines, not down columns
     axes.legend(
         [handles[k] for k in order], [labels[k] for k in order], ncols=columns, loc="lower left",

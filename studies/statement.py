@@ -147,8 +147,9 @@ def _states(posterior: Posterior, q: Array) -> tuple[Bands, Array]:
         kept.append((s.position[..., here], s.element.stretch[..., here], s.element.stress[..., here],
                      s.end_force[..., here], p.log_area[..., here]))  # fmt: skip
     thin = q[::stride]
-    columns = [np.concatenate(c, axis=-1) for c in zip(*kept, strict=True)]
-    return Bands(posterior.layout.unpack(thin), *columns, thin), np.concatenate(stood)
+    position, stretch, stress, end, log_area = (np.concatenate(c, axis=-1) for c in zip(*kept, strict=True))
+    bands = Bands(posterior.layout.unpack(thin), position, stretch, stress, end, log_area, thin)
+    return bands, np.concatenate(stood)
 
 
 def _capacities(
@@ -187,9 +188,8 @@ def _margin(study: Study, demand: Demand, of: Capacity, index: int) -> Margin:
         short = np.mean([_at_load(of, np.full(draws, r)) for r in nodes], axis=0)
         ratio = _ratio_quantiles(of, nodes, 1.0 - np.array(reliability))
     else:
-        value = demand.force
-        exact = isinstance(value, float | int)
-        required = demand.factor * (np.full(draws, float(value)) if exact else value.value(rng.standard_normal(draws)))
+        value, z = demand.force, rng.standard_normal(draws)
+        required = demand.factor * (np.full(draws, float(value)) if isinstance(value, float | int) else value.value(z))
         ratio = of.quantiles[:, 1:] / required[:, None]
         short = _at_load(of, required)
     return margin(demand.name, required, of.load, ratio, short, reliability, confidence, failures, of.quantiles[:, 1:])
