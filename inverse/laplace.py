@@ -11,6 +11,7 @@ from pullback.inverse.evidence import Surface
 from pullback.inverse.fit import Fit, Node
 from pullback.inverse.layout import Field, Layout, Values
 from pullback.inverse.posterior import Guess, Posterior
+from pullback.inverse.root import root
 
 Array = NDArray[np.float64]
 
@@ -64,9 +65,9 @@ def laplace(fit: Fit, n: int, seed: int) -> Laplace:
     for k in np.unique(nearest):
         node, at = fit.nodes[k], np.flatnonzero(nearest == k)
         mean, scale = _in_coordinates(node, old, new)
-        root = np.linalg.cholesky(node.covariance)
+        spread = root(node.covariance)
         off = np.zeros((at.size, old.dim))
-        off[:, fit.free] = rng.standard_normal((at.size, fit.free.size)) @ root.T
+        off[:, fit.free] = rng.standard_normal((at.size, fit.free.size)) @ spread.T
         means[at] = mean
         draws[at] = mean + off * scale
         inner = node.covariance * np.outer(scale[fit.free], scale[fit.free])

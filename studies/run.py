@@ -36,7 +36,7 @@ def run_study(path: Path, out: Path | None = None, quick: bool = False, progress
     Raises BadInput for a study that cannot be read, RuntimeError for one that cannot be fitted. Earlier results stay
     untouched until the new ones are whole.
     """
-    from pullback.studies.report import draw
+    from pullback.studies.reporting import draw
 
     began = time.monotonic()
     study = read_study(path)

@@ -114,7 +114,8 @@ def margins(calibration: Calibration, sample: Sample, progress: Progress = _sile
     informed = largest_stretch_informed(calibration, bands)
     applies_to = next_part if study.statement.applies_to == "next part" else pulled
     at_capacity = float(np.median(applies_to.stretch)) if applies_to else None
-    rules = [verdict.sampled(sample.diagnosis, diagnosis), verdict.fits(fitted)]
+    rules = [verdict.asked(study.strength is not None, len(found)), verdict.sampled(sample.diagnosis, diagnosis)]
+    rules.append(verdict.fits(fitted))
     if applies_to is not None and at_capacity is not None:
         rules += [verdict.stable(float(np.mean(applies_to.unstable))), verdict.informed(at_capacity, informed)]
         rules.append(verdict.not_carried(moves))
@@ -192,7 +193,10 @@ def _margin(study: Study, demand: Demand, of: Capacity, index: int) -> Margin:
         required = demand.factor * (np.full(draws, float(value)) if isinstance(value, float | int) else value.value(z))
         ratio = of.quantiles[:, 1:] / required[:, None]
         short = _at_load(of, required)
-    return margin(demand.name, required, of.load, ratio, short, reliability, confidence, failures, of.quantiles[:, 1:])
+    middle = _middle(demand) * demand.factor
+    return margin(
+        demand.name, middle, required, of.load, ratio, short, reliability, confidence, failures, of.quantiles[:, 1:]
+    )
 
 
 def _at_load(of: Capacity, load: Array) -> Array:

@@ -54,5 +54,6 @@ def diagnose(draws: Array, names: list[str]) -> Diagnosis:
         still = each(lambda x: float(np.ptp(x) == 0.0))
         return np.where(still > 0.0, 0.0, np.minimum(np.nan_to_num(found), total))
 
-    rhat = np.nan_to_num(each(lambda x: az.rhat(x)), nan=np.inf)
+    with np.errstate(invalid="ignore", divide="ignore"):
+        rhat = np.nan_to_num(each(lambda x: az.rhat(x)), nan=np.inf)
     return Diagnosis(names, rhat, ess("bulk"), ess("tail"), ess("sd"), draws.shape[1])

@@ -12,6 +12,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pullback.inverse.laplace import Laplace
+from pullback.inverse.root import root
 from pullback.inverse.sampling.diagnose import Diagnosis, diagnose
 from pullback.inverse.sampling.moves import Hamiltonian
 
@@ -48,8 +49,7 @@ def sample(
     """Sample the posterior from its Laplace approximation until every unknown has `effective` draws."""
     began, posterior = time.monotonic(), start.posterior
     dim = posterior.layout.dim
-    root = np.asarray(np.linalg.cholesky(start.covariance), float)
-    move = Hamiltonian(posterior.value_and_gradient, root, seed, 0.5 * dim**-0.25)
+    move = Hamiltonian(posterior.value_and_gradient, root(start.covariance), seed, 0.5 * dim**-0.25)
     sampler = emcee.EnsembleSampler(WALKERS, dim, posterior.log_density, moves=move, vectorize=True)
     state = emcee.State(_starting_points(start, seed), log_prob=None)
     state = _warm_up(sampler, move, state, start, progress)
@@ -99,7 +99,7 @@ def _warm_up(
     n, dim = seen.shape
     # Shrinkage n/(n + 5 dim) towards Laplace: few draws must not invent directions.
     share = n / (n + 5.0 * dim)
-    move.root = np.linalg.cholesky(share * np.cov(seen.T).reshape(dim, dim) + (1.0 - share) * start.covariance)
+    move.root = root(share * np.cov(seen.T).reshape(dim, dim) + (1.0 - share) * start.covariance)
     move.freeze()
     move.adapt()
     state = _run(sampler, state, TUNE, lambda k: progress("warm-up", (SETTLE + ESTIMATE + k) / total))

@@ -51,24 +51,30 @@ def lower_bound(values: Array, confidence: float, weights: Array | None = None) 
     return float(np.interp(1.0 - confidence, mass / weights.sum(), values[order]))
 
 
+def withheld(reliability: float, failures: int) -> str | None:
+    """Why no load is guaranteed at this reliability, or None."""
+    if reliability > 0.95 and failures < FEW_FAILURES:
+        return f"{failures} distinct failures; {FEW_FAILURES} are needed for a reliability of {100 * reliability:g} %"
+    return None
+
+
 def margin(
-    demand: str, required: Array, capacity: Array, ratio: Array, shortfall: Array,
+    demand: str, middle: float, required: Array, capacity: Array, ratio: Array, shortfall: Array,
     reliability: tuple[float, ...], confidence: float, failures: int, quantiles: Array,
 ) -> Margin:  # fmt: skip
     """Margin of one demand.
 
-    `required` (draws,) N, factor included; `capacity` (draws,) one part's a draw; `ratio` (draws, reliabilities)
+    `middle`: median of what is required, N; `required` (draws,) N, factor included; `capacity` (draws,) one part's a draw; `ratio` (draws, reliabilities)
     capacity over requirement that each share of parts reaches; `quantiles`, of the same shape, the load that each share
     carries, N; `shortfall` (draws,) share of parts that fall short; `failures`: distinct coupon failures.
     """
     found = []
     for k, r in enumerate(reliability):
-        if r > 0.95 and failures < FEW_FAILURES:
-            reason = f"{failures} distinct failures; {FEW_FAILURES} are needed for a reliability of {100 * r:g} %"
+        reason = withheld(r, failures)
+        if reason is not None:
             found.append(Guaranteed(r, confidence, None, None, "not shown", reason))
             continue
-        value = lower_bound(quantiles[:, k], confidence)
         least = lower_bound(ratio[:, k], confidence) - 1.0
-        found.append(Guaranteed(r, confidence, value, least, "met" if least >= 0.0 else "not met"))
-    middle = float(np.median(required))
+        met = "met" if least >= 0.0 else "not met"
+        found.append(Guaranteed(r, confidence, lower_bound(quantiles[:, k], confidence), least, met))
     return Margin(demand, middle, required, capacity / required - 1.0, found, shortfall, ratio - 1.0)

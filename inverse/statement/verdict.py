@@ -27,14 +27,23 @@ class Rule:
     remedy: str
 
 
+def asked(strength: bool, demands: int) -> Rule:
+    """There is something to state: a strength and a demand."""
+    missing = "the study asks for no demand" if strength else "the study gives no strength"
+    if strength and demands:
+        return Rule("asked", True, "the study gives a strength and a demand", None, None, "")
+    return Rule("asked", False, missing, None, None, "add [strength] with coupons, and a [[demand]]")
+
+
 def sampled(diagnosis: Diagnosis | None, margins: Diagnosis | None) -> Rule:
     """Converged chains with enough effective draws, for every unknown and each margin."""
     remedy = "run again without --quick; if it stays, raise max_minutes or simplify the study"
-    if diagnosis is None or margins is None:
+    if diagnosis is None:
         text = "the posterior was not sampled but approximated at the best fit"
         return Rule("sampled", False, text, None, None, remedy)
-    rhat, least = max(diagnosis.rhat_max, margins.rhat_max), min(diagnosis.least, margins.least)
-    worst = diagnosis.worst() if diagnosis.least <= margins.least else margins.worst()
+    each = [diagnosis] if margins is None else [diagnosis, margins]
+    rhat, least = max(d.rhat_max for d in each), min(d.least for d in each)
+    worst = min(each, key=lambda d: d.least).worst()
     passed = rhat <= RHAT and least >= ESS and diagnosis.draws >= CHAIN
     text = f"largest R-hat {rhat:.4f}, least effective draws {least:.0f} ({worst}), {diagnosis.draws} draws a chain"
     return Rule("sampled", passed, text, rhat if rhat > RHAT else least, RHAT if rhat > RHAT else ESS, remedy)
@@ -75,8 +84,9 @@ def not_carried(moves: list[PriorMove]) -> Rule:
         return Rule("prior", True, "no prior to vary", None, MOVED, remedy)
     worst = max(moves, key=lambda m: abs(m.change) - 2.0 * m.error)
     beyond = abs(worst.change) - 2.0 * worst.error
+    rough = f"; Pareto shape {worst.tail:.2f}: a rough figure" if worst.tail > 0.7 else ""
     text = (
         f"prior of {worst.prior} times {worst.factor:g} moves the load at {100 * worst.reliability:g} % by "
-        f"{100 * worst.change:+.1f} % (Monte Carlo error {100 * worst.error:.1f} %)"
+        f"{100 * worst.change:+.1f} % (Monte Carlo error {100 * worst.error:.1f} %){rough}"
     )
     return Rule("prior", beyond <= MOVED, text, abs(worst.change), MOVED, remedy)

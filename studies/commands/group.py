@@ -70,6 +70,10 @@ def entry(arguments: Sequence[str]) -> int:
     except click.ClickException as bad:
         click.echo(f"pullback: {bad.format_message()}", err=True)
         return 2
+    except OSError as bad:
+        place = f"{bad.filename}: " if bad.filename else ""
+        click.echo(f"pullback: {place}{bad.strerror or bad}; expected a place that can be read and written", err=True)
+        return 2
     except (click.Abort, KeyboardInterrupt):
         click.echo("pullback: stopped; nothing was written and earlier results are untouched", err=True)
         return 130

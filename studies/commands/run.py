@@ -29,13 +29,16 @@ def command(study: Path, out: Path | None, quick: bool, strict: bool, resume: bo
     # Small matrices: threads inside the linear algebra cost more than they bring.
     for name in ("OMP_NUM_THREADS", "OPENBLAS_NUM_THREADS", "MKL_NUM_THREADS"):
         os.environ.setdefault(name, "1")
+    import numpy as np
+
     from pullback.studies.run import run_study
 
     try:
         with bars() as progress:
             done = run_study(study, out, quick, progress)
-    except RuntimeError as failed:
-        raise click.ClickException(f"{study}: {failed}; check the readings' units and the priors") from failed
+    except (RuntimeError, ArithmeticError, np.linalg.LinAlgError) as failed:
+        why = f"{study}: the readings cannot be fitted ({failed})"
+        raise click.ClickException(f"{why}; look at `pullback check`, the readings' units and the priors") from failed
     _tell(done)
     if strict and done.statement.stated and done.statement.met == "not met":
         return 4
@@ -43,6 +46,7 @@ def command(study: Path, out: Path | None, quick: bool, strict: bool, resume: bo
 
 
 def _tell(done: Finished) -> None:
+    from pullback.studies.reporting import words
     from pullback.studies.results.sentence import sentence
 
     s = done.statement
@@ -59,5 +63,6 @@ def _tell(done: Finished) -> None:
                 click.echo(f"  {m.demand}: {at}: not shown ({g.reason})")
             else:
                 met = g.met if s.stated else "not shown"
-                click.echo(f"  {m.demand}: {at}: {g.value:.3g} N of {m.required:.3g} N, {100 * g.margin:+.0f} %, {met}")
+                load, need = words.floor_load(g.value, m.required), words.given(m.required)
+                click.echo(f"  {m.demand}: {at}: {load} N of {need} N, {words.floor_percent(g.margin)}, {met}")
     click.echo(f"report: {done.folder / 'report.html'}")

@@ -10,7 +10,7 @@ from pathlib import Path
 import pytest
 from report_folder import build
 
-from pullback.studies.report import draw
+from pullback.studies.reporting import draw
 
 _NAMES = ("chromium", "chromium-browser", "google-chrome")
 CHROMIUM = next(filter(None, map(shutil.which, _NAMES)), None)

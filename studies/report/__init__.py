@@ -1,5 +1,0 @@
-"""The report: one page that an engineer can sign, drawn from a results folder alone."""
-
-from pullback.studies.report.document import draw
-
-__all__ = ["draw"]
