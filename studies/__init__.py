@@ -14,7 +14,13 @@ if TYPE_CHECKING:
 
 __all__ = ["calibrate", "margins", "read_study", "report", "sample"]
 
-_FROM = {"read_study": "read", "calibrate": "calibration", "sample": "calibration", "margins": "statement", "report": "reporting"}
+_FROM = {
+    "read_study": "read",
+    "calibrate": "calibration",
+    "sample": "calibration",
+    "margins": "statement",
+    "report": "reporting",
+}
 
 
 def __getattr__(name: str) -> Any:

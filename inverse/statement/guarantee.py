@@ -64,9 +64,10 @@ def margin(
 ) -> Margin:  # fmt: skip
     """Margin of one demand.
 
-    `middle`: median of what is required, N; `required` (draws,) N, factor included; `capacity` (draws,) one part's a draw; `ratio` (draws, reliabilities)
-    capacity over requirement that each share of parts reaches; `quantiles`, of the same shape, the load that each share
-    carries, N; `shortfall` (draws,) share of parts that fall short; `failures`: distinct coupon failures.
+    `middle`: median of what is required, N; `required` (draws,) N, factor included; `capacity` (draws,) one part's a
+    draw; `ratio` (draws, reliabilities) capacity over requirement that each share of parts reaches; `quantiles`, of the
+    same shape, the load that each share carries, N; `shortfall` (draws,) share of parts that fall short; `failures`:
+    distinct coupon failures.
     """
     found = []
     for k, r in enumerate(reliability):
