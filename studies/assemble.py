@@ -329,10 +329,28 @@ def _coupon_stress(study: Study, law: Law, both: NDArray[np.bool_], slope: Array
     """`slope`: d log stress / d log stretch at each coupon's break, through which the elongation's error counts."""
     assert study.strength is not None
     coupons, g = study.strength.coupons, study.gauges
-    stretch, stress = 1.0 + coupons.elongation[both], coupons.stress[both]
+    stress = coupons.stress[both]
     own = g.coupon_stress.sigma(stress) / stress if g.coupon_stress else np.zeros(stress.size)
-    along = g.coupon_elongation.sigma(stretch - 1.0) if g.coupon_elongation else np.zeros(stretch.size)
+    elongation, along = expected_elongation(coupons.elongation[both], g.coupon_elongation)
+    stretch = 1.0 + elongation
     return CouponStress(law, stretch, np.log(stress), np.hypot(own, slope * along / stretch))
+
+
+def expected_elongation(read: Array, gauge: Gauge | None) -> tuple[Array, Array]:
+    """Expected true elongation of each coupon given its reading, and its standard uncertainty.
+
+    Coupons break within a narrow band: part of what their readings differ by is the reading error, so that a reading is
+    drawn in towards their mean by the share of the scatter that is true (errors in variables; Fuller, Measurement Error
+    Models, 1987, eq. 1.1.13). Taken as read, the law's slope at break would come out too small.
+    """
+    if gauge is None or gauge.value <= 0.0:
+        return read, np.zeros(read.size)
+    log, error = np.log(read), gauge.sigma(read) / read
+    if read.size < 3:
+        return read, read * error
+    true = float(np.clip(1.0 - np.mean(error**2) / max(float(np.var(log, ddof=1)), 1e-12), 1.0 / read.size, 1.0))
+    expected = np.exp(log.mean() + true * (log - log.mean()))
+    return expected, expected * error * np.sqrt(true)
 
 
 def with_coupon_slope(model: Model, q: Array) -> Model:
@@ -343,7 +361,7 @@ def with_coupon_slope(model: Model, q: Array) -> Model:
     assert study.strength is not None
     values = model.posterior.layout.unpack(q[None])
     theta = np.array([values[p.name][0] for p in model.law.parameters])
-    stretch = 1.0 + study.strength.coupons.elongation[both]
+    stretch = 1.0 + expected_elongation(study.strength.coupons.elongation[both], study.gauges.coupon_elongation)[0]
     stress, slope = model.law.stress_and_slope(stretch, theta)
     term = _coupon_stress(study, model.law, both, slope * stretch / stress)
     terms = [term if isinstance(t, CouponStress) else t for t in model.posterior.terms]

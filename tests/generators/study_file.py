@@ -87,6 +87,6 @@ reliability = [0.90]
 confidence = 0.95
 
 [sampler]
-effective_samples = 500
-max_minutes = 6
+effective_samples = 400
+max_minutes = 1.5
 """
