@@ -18,8 +18,9 @@ from pullback.inverse.statement import verdict
 from pullback.inverse.statement.guarantee import FEW_FAILURES, Margin, margin
 from pullback.inverse.statement.population import Capacity, PartModel, capacity
 from pullback.inverse.statement.priors_carry import PriorMove, prior_moves
-from pullback.studies.assemble import ELEMENTS, assemble, coupon_pairs
+from pullback.studies.assemble import ELEMENTS, assemble
 from pullback.studies.calibration import Calibration, Progress, Sample, _silent
+from pullback.studies.strength_terms import coupon_pairs
 from pullback.studies.study import Demand, Study
 
 Array = NDArray[np.float64]

@@ -12,11 +12,11 @@ from pullback.forward.solve import equilibrium
 from pullback.inverse.readings.base import GaussianTerm
 from pullback.inverse.readings.marks import Marks
 from pullback.inverse.statement.population import Capacity
-from pullback.studies.assemble import coupon_measure
 from pullback.studies.results.bands import LEVEL, band, columns
 from pullback.studies.results.cells import defused
 from pullback.studies.results.parameters import parameters
 from pullback.studies.statement import Statement
+from pullback.studies.strength_terms import coupon_measure
 
 Array = NDArray[np.float64]
 
