@@ -88,5 +88,5 @@ confidence = 0.95
 
 [sampler]
 effective_samples = 400
-max_minutes = 1.5
+max_minutes = 0.5
 """
