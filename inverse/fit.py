@@ -79,13 +79,13 @@ def fit(posterior: Posterior, seed: int, progress: Progress = lambda share: None
     for k, z in enumerate(plan):
         nodes.append(_node(posterior, _at(_nearest(nodes, z), hyper, z), hyper, free))
         progress((k + 1) / (len(plan) + 5 * _REFINEMENTS))
+    if not any(np.isfinite(n.log_evidence) for n in nodes):
+        raise RuntimeError("no starting point leads to a fit with finite density")
     for turn in range(_REFINEMENTS if hyper.size else 0):
         for z in _refined(nodes):
             nodes.append(_node(posterior, _at(_nearest(nodes, z), hyper, z), hyper, free))
         progress((len(plan) + 5 * turn + 5) / (len(plan) + 5 * _REFINEMENTS))
     nodes = [n for n in nodes if np.isfinite(n.log_evidence)]
-    if not nodes:
-        raise RuntimeError("no starting point leads to a fit with finite density")
     progress(1.0)
     return Fit(posterior, sorted(nodes, key=lambda n: -n.log_evidence), hyper, free, costs)
 

@@ -66,7 +66,8 @@ class HazardCurve:
     def quantile(self, share: Array) -> Array:
         """Load at which each share of the parts has failed."""
         failed = 1.0 - np.exp(-np.exp(self.log_hazard)).mean(axis=0)
-        keep = np.concatenate(([True], np.diff(failed) > 0.0))
+        # Of loads at which as many have failed the last one: a piece that stood has none failed up to there.
+        keep = np.concatenate((np.diff(failed) > 0.0, [True]))
         return np.exp(np.interp(share, failed[keep], self.log_load[keep]))
 
     def load_at(self, hazard: Array) -> Array:

@@ -2,11 +2,14 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 from brute_force import failure_loads, lognormal_fails, weibull_fails, yeoh
 from scipy import stats
 
+from pullback.forward import Force, Part, law, solve
 from pullback.forward.criteria import criteria
 from pullback.forward.laws import registry
 from pullback.forward.loads import Weight
@@ -89,12 +92,12 @@ def test_most_stressed_section_of_a_uniform_part(log_sd):
     ids=str,
 )
 def test_against_simulation(kind, shape):
-    """Sections 2 % and stiffness 5 % from part to part; 10 000 parts simulated.
+    """Sections 6 % and stiffness 5 % from part to part; 10 000 parts simulated.
 
     Within five standard errors of the simulation, and 0.3 % for tables and for 16 parts a draw. The share failed is
     asked at the load by which a tenth of the simulated have.
     """
-    parts, p2p, scatter_of_stiffness = 10_000, 0.02, 0.05
+    parts, p2p, scatter_of_stiffness = 10_000, 0.06, 0.05
     model = part(kind, **shape)
     simulated = simulate(model, kind, shape, parts, p2p, scatter_of_stiffness)
     wanted = np.quantile(simulated, SHARES)
@@ -123,7 +126,8 @@ def simulate(model, kind, shape, parts, p2p, scatter_of_stiffness):
     log_area = piece.log_outline[:, None] + p2p * rng.standard_normal(parts)
     if shape["spread"]:
         cov = shape["spread"] ** 2 * np.exp(-0.5 * ((middle[:, None] - middle) / 15.0) ** 2)
-        log_area = log_area + np.linalg.cholesky(cov + 1e-10 * np.eye(middle.size)) @ rng.standard_normal(log_area.shape)
+        root = np.linalg.cholesky(cov + 1e-10 * np.eye(middle.size))
+        log_area = log_area + root @ rng.standard_normal(log_area.shape)
     stiffness = np.exp(scatter_of_stiffness * rng.standard_normal(parts))
     first, second = STRENGTH[kind]
     weakest = kind[1] == "weibull"
@@ -135,12 +139,26 @@ def simulate(model, kind, shape, parts, p2p, scatter_of_stiffness):
     )
 
 
-def test_pulled_piece_that_stood_is_conditioned_on_it():
-    """Having held F0, the load it holds with probability 1 − p has H = H(F0) − log(1 − p)."""
+@pytest.mark.parametrize("stood", [0.0005, 0.2, 3.0])
+def test_pulled_piece_that_stood_is_conditioned_on_it(stood):
+    """Having held F0, the load it holds with probability 1 − p has H = H(F0) − log(1 − p); to the loads' step."""
     kind = ("nominal stress", "weibull")
     model, (s0, m) = part(kind), STRENGTH[kind]
-    size, stood = AREA * LENGTH / VOLUME, 0.2
+    size = AREA * LENGTH / VOLUME
     values = exactly(model, (s0, m), 2)
     found = capacity(model, values, SHARES, np.ones(1), 1, None, np.full(2, stood))
     wanted = AREA * s0 * ((stood - np.log1p(-SHARES)) / size) ** (1.0 / m)
-    assert found.quantiles[0] == pytest.approx(wanted, rel=1.5e-3)
+    assert found.quantiles[0] == pytest.approx(wanted, rel=4e-3)
+
+
+@pytest.mark.parametrize("g", [9806.65, -9806.65])
+def test_what_hangs_below_is_what_the_solver_finds(g):
+    """Force in each element under an end force = that force and the weight beyond the element's middle."""
+    model = part(("elongation", "weibull"), tapered=True)
+    model = replace(model, piece=replace(model.piece, loads=(Weight(g),)))
+    area = np.exp(model.piece.log_outline)
+    rubber = law("yeoh", c10=LAW[0], c20=LAW[1], c30=LAW[2])
+    state = solve(Part(model.piece.nodes, area, DENSITY), rubber, Force([7.0]), [Weight(g)])
+    hanging = model.hanging(model.piece.log_outline[:, None], DENSITY)
+    assert 7.0 + hanging[:, 0] == pytest.approx(state.equilibrium.element.force[:, 0, 0], rel=1e-9)
+    assert abs(hanging[0, 0]) > 0.3

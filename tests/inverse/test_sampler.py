@@ -6,6 +6,7 @@ from dataclasses import dataclass, field
 
 import numpy as np
 import pytest
+from emcee.state import State
 
 from pullback.inverse.laplace import Laplace
 from pullback.inverse.layout import Layout, Scalar
@@ -107,6 +108,21 @@ def test_walkers_do_not_share_random_numbers():
     second = move._random(4, DIM)[0]
     both = np.concatenate((first, second))
     assert np.unique(both).size == both.size
+
+
+def test_kept_gradient_is_that_of_the_point_where_the_walker_stands():
+    """After a trajectory of which some walkers' are accepted and others' rejected."""
+    target = Target()
+    move = Hamiltonian(target.value_and_gradient, np.linalg.cholesky(target.covariance), 3, 1.0)
+    q = target.mean + np.random.default_rng(1).standard_normal((40, DIM)) @ np.linalg.cholesky(target.covariance).T
+    state = State(q.copy(), log_prob=target.log_density(q))
+    state, accepted = move.propose(None, state)
+    assert 3 < accepted.sum() < 37
+    assert np.all((state.coords != q).any(axis=1) == accepted)
+    before = move.evaluations
+    assert move._gradient(state.coords) == pytest.approx(target.value_and_gradient(state.coords)[1], rel=1e-12)
+    assert move.evaluations == before  # kept, not computed again
+    assert state.log_prob == pytest.approx(target.log_density(state.coords), rel=1e-12)
 
 
 def test_wrong_gradient_is_punished():
