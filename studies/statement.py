@@ -216,7 +216,7 @@ def _ratio_quantiles(of: Capacity, nodes: Array, shares: Array) -> Array:
     short = np.mean([[np.interp(ratios * r, of.loads, row) for row in of.failed] for r in nodes], axis=0)
     out = np.empty((of.load.size, shares.size))
     for i, row in enumerate(short):
-        keep = np.concatenate(([True], np.diff(row) > 0.0))
+        keep = np.concatenate((np.diff(row) > 0.0, [True]))
         out[i] = np.exp(np.interp(shares, row[keep], np.log(ratios[keep])))
     return out
 

@@ -219,7 +219,7 @@ def capacity(
     out: list[tuple[Array, ...]] = []
     where = np.zeros(model.piece.log_outline.size)
     for i in range(draws):
-        rng = np.random.Generator(np.random.Philox(key=[seed, 3], counter=[0, 0, int(part_to_part is None), i]))
+        rng = np.random.Generator(np.random.Philox(key=[seed, 2**33 + 3], counter=[0, 0, int(part_to_part is None), i]))
         table, strength = model.table(values, i), model.strength(values, i)
         pulled = part_to_part is None
         parts = pulled_piece(model, values, i) if pulled else next_parts(model, values, i, part_to_part or 0.0, rng)
