@@ -20,12 +20,11 @@ from scipy.optimize import least_squares
 
 from pullback.inverse.evidence import Surface
 from pullback.inverse.layout import Layout, Modulus, Scalar
-from pullback.inverse.posterior import Posterior
+from pullback.inverse.posterior import HYPER, Posterior
 
 Array = NDArray[np.float64]
 Progress = Callable[[float], None]
 
-HYPER = ("spread", "correlation_length")
 _DIFFERENCE = 0.02
 _NEWTON = 12
 _STARTS = 4
@@ -34,12 +33,12 @@ _REFINEMENTS = 2
 
 @dataclass(frozen=True)
 class Node:
-    """Laplace approximation at fixed hyper-parameters: best point q (dim,), covariance of the free coordinates,
-    log-density there and log evidence."""
+    """Laplace approximation at fixed hyper-parameters: best point q (dim,), `curvature` (minus the
+    Hessian) over the free coordinates, log-density there and log evidence."""
 
     hyper: Array
     q: Array
-    covariance: Array
+    curvature: Array
     log_density: float
     log_evidence: float
 
@@ -202,9 +201,8 @@ def _node(posterior: Posterior, q: Array, hyper: NDArray[np.intp], free: NDArray
         return Node(q[hyper], q, np.eye(free.size), -np.inf, -np.inf)
     factor = linalg.cho_factor(hessian)
     log_det = 2.0 * np.sum(np.log(np.diag(factor[0])))
-    covariance = linalg.cho_solve(factor, np.eye(free.size))
     evidence = value + 0.5 * free.size * np.log(2.0 * np.pi) - 0.5 * log_det
-    return Node(q[hyper], q, covariance, value, evidence)
+    return Node(q[hyper], q, hessian, value, evidence)
 
 
 def _newton(posterior: Posterior, q: Array, free: NDArray[np.intp]) -> tuple[Array, float, Array]:

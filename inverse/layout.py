@@ -145,86 +145,48 @@ class Drive:
 
 @dataclass(frozen=True)
 class Field:
-    """Coefficients of one part's section field; value beta (m, lanes).
+    """Coefficients of one part's section field, not centred; value beta (m, lanes).
 
-    beta_k has the prior standard deviation w_k(spread, ell). Its coordinate q_k is beta_k less its expected value, over
-    its expected standard deviation, given the hyper-parameters and what the data say of it:
-
-        a = information w²,   beta = centre a/(1+a) + q w/sqrt(1+a).
-
-    Where the data say nothing this is the non-centred form, q = beta/w; where they say all, the centred one; in between
-    the one that leaves q nearest to a standard normal whatever spread and ell are. `information` (m,): diagonal of JᵀJ
-    by beta at the fit; `centre` (m,): beta at the fit. (Between Papaspiliopoulos, Roberts & Sköld, Stat. Sci. 22 (2007)
-    59, sec. 3, and the conditional mean of a normal.)
+    beta_k = w_k(spread, ell) q_k with q_k standard normal. The sampler moves in other coordinates: see `whitening`.
     """
 
     name: str
     unit: str
     basis: Basis
-    information: Array
-    centre: Array
 
     @property
     def size(self) -> int:
         """Number of coefficients."""
         return self.basis.omega.size
 
-    def _terms(self, values: Values) -> tuple[Array, Array, Array, Array]:
-        """w, 1/(1+a), mean and standard deviation of beta, each (m, lanes)."""
-        log_w = self.basis.log_weight(values["spread"], values["correlation_length"])
-        # Weights of fast waves fall below the smallest numbers; their coefficients are then nil all the same.
-        w = np.exp(np.maximum(log_w, _LEAST_LOG_WEIGHT))
-        a = self.information[:, None] * w * w
-        rest = 1.0 / (1.0 + a)
-        return w, rest, self.centre[:, None] * a * rest, w * np.sqrt(rest)
+    def weight(self, values: Values) -> Array:
+        """w_k (m, lanes)."""
+        return np.exp(self.basis.log_weight(values["spread"], values["correlation_length"]))
 
     def unpack(self, q: Array, values: Values) -> Array:
         """beta_k."""
-        _, _, mean, sd = self._terms(values)
-        return mean + sd * q
+        return self.weight(values) * q
 
     def log_prior(self, q: Array, values: Values) -> Array:
-        """Normal density of beta times dbeta/dq."""
-        w, _, mean, sd = self._terms(values)
-        z = (mean + sd * q) / w
-        return np.sum(np.log(sd / w) - 0.5 * z * z, axis=0)
+        """Standard normal."""
+        return -0.5 * np.sum(q * q, axis=0)
 
     def pull_back(self, q: Array, values: Values, grads: Values) -> Array:
         """Chain to the coordinates, and through w to spread and correlation length."""
-        w, rest, mean, sd = self._terms(values)
-        z = (mean + sd * q) / w
-        g_beta = grads[self.name] - z / w
-        by_log_w = g_beta * self._by_log_w(q, rest, mean, sd) + z * z - 1.0 + rest
-        spread, ell = values["spread"], values["correlation_length"]
-        dw = self.basis.log_weight_by_log_ell(ell)
-        grads["spread"] = grads["spread"] + by_log_w.sum(axis=0) / spread
-        grads["correlation_length"] = grads["correlation_length"] + (by_log_w * dw).sum(axis=0) / ell
-        return g_beta * sd
+        g = grads[self.name] * self.weight(values)
+        along, ell = g * q, values["correlation_length"]
+        grads["spread"] = grads["spread"] + along.sum(axis=0) / values["spread"]
+        by_ell = (along * self.basis.log_weight_by_log_ell(ell)).sum(axis=0)
+        grads["correlation_length"] = grads["correlation_length"] + by_ell / ell
+        return g - q
 
     def push(self, q: Array, values: Values, cut: slice, pushed: Values) -> Array:
         """d beta / d q (m, dim), the hyper-parameters pushed already."""
-        _, rest, mean, sd = self._terms(values)
-        by_log_w = self._by_log_w(q, rest, mean, sd)
-        dw = self.basis.log_weight_by_log_ell(values["correlation_length"])
-        jac = by_log_w * pushed["spread"] / values["spread"]
-        jac = jac + by_log_w * dw * pushed["correlation_length"] / values["correlation_length"]
-        jac[:, cut] += np.diag(sd[:, 0])
+        w, ell = self.weight(values), values["correlation_length"]
+        jac = w * q * pushed["spread"] / values["spread"]
+        jac = jac + w * q * self.basis.log_weight_by_log_ell(ell) * pushed["correlation_length"] / ell
+        jac[:, cut] += np.diag(w[:, 0])
         return np.asarray(jac)
-
-    def _by_log_w(self, q: Array, rest: Array, mean: Array, sd: Array) -> Array:
-        """d beta / d log w at fixed q: 2 mean/(1+a) + sd q/(1+a)."""
-        return rest * (2.0 * mean + sd * q)
-
-    def scale(self, values: Values) -> tuple[Array, Array]:
-        """Mean and standard deviation of beta that the coordinates count from, (m, lanes)."""
-        return self._terms(values)[2:]
-
-    def informed_by(self, information: Array, centre: Array) -> Field:
-        """The same field with coordinates that expect this of the data."""
-        return replace(self, information=information, centre=centre)
-
-
-_LEAST_LOG_WEIGHT = -80.0
 
 
 @dataclass(frozen=True)

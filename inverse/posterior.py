@@ -9,26 +9,34 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pullback.forward.laws.base import Law
-from pullback.inverse.layout import Layout, Values
+from pullback.inverse.layout import Field, Layout, Values
 from pullback.inverse.piece import Cotangent, Piece, Prediction
 from pullback.inverse.readings.base import GaussianTerm, Term
 from pullback.inverse.readings.marks import Marks
 
 Array = NDArray[np.float64]
 
+HYPER = ("spread", "correlation_length")
+"""What the field's coefficients hang on."""
+_LEAST_WEIGHT = 1e-30
+
 
 @dataclass(frozen=True)
 class Guess:
-    """First-order prediction of a piece's positions about a reference point q0 (dim,): a start for Newton's method
-    that does not depend on what was solved before, so that draws do not depend on their history."""
+    """First-order prediction of a piece's positions about a reference point: a start for Newton's method that does not
+    depend on what was solved before, so that draws do not depend on their history.
 
-    q0: Array
+    Counted in `features` (dim,), the coordinates with the field's beta in place of its own: positions are nearly linear
+    in these, and do not depend on the hyper-parameters beside them.
+    """
+
+    features: Array
     position: Array
-    by_q: Array
+    by_feature: Array
 
-    def at(self, q: Array) -> Array:
-        """Positions (n+1, steps, lanes) for q (lanes, dim)."""
-        return self.position[..., None] + self.by_q @ (q - self.q0).T
+    def at(self, features: Array) -> Array:
+        """Positions (n+1, steps, lanes) for features (lanes, dim)."""
+        return self.position[..., None] + self.by_feature @ (features - self.features).T
 
 
 @dataclass
@@ -62,7 +70,7 @@ class Posterior:
         out = {}
         for piece in self.pieces:
             guess = self.guesses.get(piece.name)
-            out[piece.name] = piece.predict(values, None if guess is None else guess.at(q))
+            out[piece.name] = piece.predict(values, None if guess is None else guess.at(self.features(q, values)))
         return values, out
 
     def log_density(self, q: Array) -> Array:
@@ -116,9 +124,23 @@ class Posterior:
         """Take q (dim,) as the reference of the first-order starting positions."""
         values, predictions = self.predict(q[None])
         pushed = self.layout.push(q[None], values)
+        features = self.features(q[None], values)[0]
         for p in self.pieces:
-            change = p.push(predictions[p.name], pushed).state.position
-            self.guesses[p.name] = Guess(q.copy(), predictions[p.name].state.position[..., 0], change)
+            change = p.push(predictions[p.name], pushed).state.position.copy()
+            for b in self.layout.blocks:
+                if isinstance(b, Field):
+                    change[..., self.layout.slices[b.name]] /= np.maximum(b.weight(values)[:, 0], _LEAST_WEIGHT)
+                elif b.name in HYPER:
+                    change[..., self.layout.slices[b.name]] = 0.0
+            self.guesses[p.name] = Guess(features, predictions[p.name].state.position[..., 0], change)
+
+    def features(self, q: Array, values: Values) -> Array:
+        """Coordinates with each field's beta in place of its own (lanes, dim)."""
+        out = q.copy()
+        for b in self.layout.blocks:
+            if isinstance(b, Field):
+                out[:, self.layout.slices[b.name]] = values[b.name].T
+        return out
 
     def _bad(
         self, q: Array, values: Values, predictions: dict[str, Prediction], value: Array, gradient: Array

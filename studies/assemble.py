@@ -183,8 +183,7 @@ def _unknowns(
     if piece.basis is not None:
         add("spread", "", variation.spread)
         add("correlation_length", "mm", variation.correlation_length)
-        zero = np.zeros(piece.basis.omega.size)
-        blocks.append(Field(names.field, "", piece.basis, zero, zero))
+        blocks.append(Field(names.field, "", piece.basis))
     blocks.append(_drive(pull, piece, study))
     return blocks, constants
 

@@ -15,6 +15,7 @@ from pullback.inverse.laplace import Laplace
 from pullback.inverse.root import root
 from pullback.inverse.sampling.diagnose import Diagnosis, diagnose
 from pullback.inverse.sampling.moves import Hamiltonian
+from pullback.inverse.whitening import Density
 
 Array = NDArray[np.float64]
 Progress = Callable[[str, float], None]
@@ -49,16 +50,18 @@ def sample(
     """Sample the posterior from its Laplace approximation until every unknown has `effective` draws."""
     began, posterior = time.monotonic(), start.posterior
     dim = posterior.layout.dim
-    move = Hamiltonian(posterior.value_and_gradient, root(start.covariance), seed, 0.5 * dim**-0.25)
-    sampler = emcee.EnsembleSampler(WALKERS, dim, posterior.log_density, moves=move, vectorize=True)
-    state = emcee.State(_starting_points(start, seed), log_prob=None)
+    density = start.whitening.density(posterior.value_and_gradient)
+    move = Hamiltonian(density, root(start.covariance), seed, 0.5 * dim**-0.25)
+    sampler = emcee.EnsembleSampler(WALKERS, dim, lambda y: density(y)[0], moves=move, vectorize=True)
+    state = emcee.State(_starting_points(start, density), log_prob=None)
     state = _warm_up(sampler, move, state, start, progress)
     chain, log_p, stopped = np.empty((WALKERS, 0, dim)), np.empty((WALKERS, 0)), ""
     while not stopped:
         n, done = (BLOCK, chain.shape[1]) if chain.shape[1] else (LEAST_DRAWS, 0)
         tick = partial(_tick, progress, done, n)
         state = _run(sampler, state, n, tick)
-        chain = np.concatenate((chain, sampler.get_chain().swapaxes(0, 1)), axis=1)
+        new = start.whitening.to_q(sampler.get_chain(flat=True)).reshape(n, WALKERS, dim)
+        chain = np.concatenate((chain, new.swapaxes(0, 1)), axis=1)
         log_p = np.concatenate((log_p, sampler.get_log_prob().T), axis=1)
         sampler.reset()
         diagnosis = diagnose(chain, posterior.layout.names())
@@ -74,15 +77,14 @@ def _tick(progress: Progress, done: int, n: int, k: int) -> None:
     progress("sampling", (done + k) / (done + n))
 
 
-def _starting_points(start: Laplace, seed: int) -> Array:
-    """Laplace draws with finite density, drawn in towards the mean where they have none."""
-    posterior = start.posterior
-    points = start.draws[:WALKERS].copy()
+def _starting_points(start: Laplace, density: Density) -> Array:
+    """Laplace draws with finite density, drawn in towards their mean where they have none."""
+    points, mean = start.y[:WALKERS].copy(), start.y.mean(axis=0)
     for pull in (1.0, 0.7, 0.4, 0.2, 0.0):
-        bad = ~np.isfinite(posterior.log_density(points))
+        bad = ~np.isfinite(density(points)[0])
         if not np.any(bad):
             return points
-        points[bad] = start.mean + pull * (start.draws[:WALKERS][bad] - start.mean)
+        points[bad] = mean + pull * (start.y[:WALKERS][bad] - mean)
     raise RuntimeError("no starting point with finite density near the fit")
 
 
