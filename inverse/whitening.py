@@ -18,6 +18,7 @@ Andrews, AIAA J. 6 (1968) 1165, eq. 10; for the idea see Papaspiliopoulos, Rober
 
 from __future__ import annotations
 
+import itertools
 from collections.abc import Callable
 from dataclasses import dataclass
 
@@ -66,13 +67,22 @@ class Whitening:
         there, so that JᵀJ is A."""
         self.layout, self.hyper, self.free, self.q_fit = layout, hyper, free, q
         self.prior = np.where(proper_coordinates(layout)[free], 1.0, _FLAT_PRECISION)
-        left, size, _ = np.linalg.svd(jacobian, full_matrices=False)
+        self._fields = [(b, layout.slices[b.name]) for b in layout.blocks if isinstance(b, Field)]
+        left, size, _ = np.linalg.svd(self._at_corners(jacobian), full_matrices=False)
         # Everything is a product with J, whose rows of coefficients of tiny weight at the fit keep their relative
         # accuracy; it counts at other hyper-parameters, where the weight is not tiny.
         self.root = jacobian.T @ left[:, size**2 > _HEARD]
         # At the best fit P q = −Jᵀ r: this is H q there.
         self.pull = self.root @ (self.root.T @ q[free]) - jacobian.T @ residual
-        self._fields = [(b, layout.slices[b.name]) for b in layout.blocks if isinstance(b, Field)]
+
+    def _at_corners(self, jacobian: Array) -> Array:
+        """The Jacobian beside what it becomes where the field is rough, and the data say more than at the fit."""
+        if not self.hyper.size:
+            return jacobian
+        corners = np.array(list(itertools.product((-1.5, 2.0), repeat=self.hyper.size)))
+        y = np.repeat(self.q_fit[None], corners.shape[0], axis=0)
+        y[:, self.hyper] = corners
+        return np.hstack([jacobian, *(jacobian * e for e in np.exp(self._scales(y)[0]))])
 
     def to_q(self, y: Array) -> Array:
         """q of y."""
@@ -106,7 +116,7 @@ class Whitening:
         scaled = g * at.half
         back = self._back(at, _times(at.g.swapaxes(1, 2), scaled))
         out[:, self.free] = scaled - _times(at.g, back)
-        inverse = np.linalg.inv(at.c)
+        inverse = np.asarray(np.linalg.inv(at.c), float)
         for j, index in enumerate(self.hyper):
             rate = at.rates[:, :, j]
             moved, log_det = self._by_hyper(at, rate, u, p, v, inverse)
@@ -201,7 +211,7 @@ def _times(matrix: Array, vector: Array) -> Array:
 
 def _solve(matrix: Array, right: Array) -> Array:
     """Solutions of one small system a lane, `right` (lanes, r)."""
-    return np.linalg.solve(matrix, right[..., None])[..., 0]
+    return np.asarray(np.linalg.solve(matrix, right[..., None])[..., 0], float)
 
 
 def proper_coordinates(layout: Layout) -> NDArray[np.bool_]:
