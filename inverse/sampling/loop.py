@@ -57,10 +57,9 @@ def sample(
     state = _warm_up(sampler, move, state, start, progress)
     chain, log_p, stopped = np.empty((WALKERS, 0, dim)), np.empty((WALKERS, 0)), ""
     while not stopped:
-        n, done = (BLOCK, chain.shape[1]) if chain.shape[1] else (LEAST_DRAWS, 0)
-        tick = partial(_tick, progress, done, n)
-        state = _run(sampler, state, n, tick)
-        new = start.whitening.to_q(sampler.get_chain(flat=True)).reshape(n, WALKERS, dim)
+        tick = partial(_tick, progress, chain.shape[1], max(BLOCK, LEAST_DRAWS - chain.shape[1]))
+        state = _run(sampler, state, BLOCK, tick)
+        new = start.whitening.to_q(sampler.get_chain(flat=True)).reshape(BLOCK, WALKERS, dim)
         chain = np.concatenate((chain, new.swapaxes(0, 1)), axis=1)
         log_p = np.concatenate((log_p, sampler.get_log_prob().T), axis=1)
         sampler.reset()
@@ -120,7 +119,7 @@ def _run(sampler: emcee.EnsembleSampler, state: emcee.State, n: int, tick: Calla
 
 
 def _stop(diagnosis: Diagnosis, effective: int, began: float, max_minutes: float) -> str:
-    if diagnosis.least >= effective and diagnosis.rhat_max <= 1.01:
+    if diagnosis.draws >= LEAST_DRAWS and diagnosis.least >= effective and diagnosis.rhat_max <= 1.01:
         return f"every unknown has {effective} effective draws"
     if (time.monotonic() - began) / 60.0 >= max_minutes:
         return f"the limit of {max_minutes:g} minutes was reached"
